@@ -1,0 +1,16 @@
+import tseslint from 'typescript-eslint';
+
+export default tseslint.config(
+  { ignores: ['dist/**', 'node_modules/**'] },
+  ...tseslint.configs.recommended,
+  {
+    rules: {
+      'no-console': 'error',
+      eqeqeq: ['error', 'always'],
+      'max-lines': ['warn', { max: 250, skipBlankLines: true, skipComments: true }],
+      '@typescript-eslint/no-explicit-any': 'error',
+      '@typescript-eslint/consistent-type-imports': 'error',
+    },
+  },
+  { files: ['tests/bench/**'], rules: { 'no-console': 'off' } },
+);
