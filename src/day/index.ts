@@ -1,0 +1,2 @@
+export * from './scanners.js';
+export * from './conflicts.js';

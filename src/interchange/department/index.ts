@@ -1,0 +1,1 @@
+export { readDepartment } from './read-department.js';

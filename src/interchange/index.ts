@@ -1,0 +1,3 @@
+export * from './library/index.js';
+export * from './requests/index.js';
+export * from './department/index.js';

@@ -1,0 +1,10 @@
+export * from './request.js';
+export * from './plan.js';
+export * from './evidence.js';
+export * from './prepare.js';
+export * from './plan-exam.js';
+export * from './choose-scanner.js';
+export { castFor, type Cast, type Candidate } from './cast.js';
+export { curveSlotsS } from './curve.js';
+export { linearSolver, type ChoiceSolver } from './solver/linear.js';
+export * from './check-library.js';

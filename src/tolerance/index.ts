@@ -1,0 +1,4 @@
+export * from './statement.js';
+export * from './survival.js';
+export * from './profile.js';
+export * from './clean-chance.js';
