@@ -16,6 +16,8 @@ export interface Compiled {
   readonly times: readonly (readonly SparseTime[])[];
   /** `equivalents[k][v][c]`: certainty equivalent of a candidate's time at `rates[k]`, seconds. */
   readonly equivalents: readonly (readonly (readonly number[])[])[];
+  /** The same at minus `sureRates[k]`. */
+  readonly sureEquivalents: readonly (readonly (readonly number[])[])[];
   readonly sharedTimes: readonly SparseTime[];
   /** Bit mask of the views of each shared time. */
   readonly sharedViews: readonly number[];
@@ -30,6 +32,9 @@ const mostBits = 30;
 
 /** Rates per second at which times are made additive; the first stands for their least values. */
 export const rates = [Infinity, 1 / 15, 1 / 60, 1 / 200, 1 / 600, 1 / 1800];
+
+/** Rates per second at which a fit is sure, used with the opposite sign. */
+export const sureRates = [1 / 30, 1 / 60, 1 / 120, 1 / 240, 1 / 480];
 
 /** @throws ProblemError for more than 30 views, or 30 candidates of one view */
 export function compiled(problem: ChoiceProblem): Compiled {
@@ -74,6 +79,9 @@ export function compiled(problem: ChoiceProblem): Compiled {
     times,
     equivalents: rates.map((rate) =>
       times.map((row) => row.map((time) => equivalentS(time, rate))),
+    ),
+    sureEquivalents: sureRates.map((rate) =>
+      times.map((row) => row.map((time) => equivalentS(time, -rate))),
     ),
     sharedTimes: shared.map((s) => sparseTime(s.time)),
     sharedViews: shared.map((s) => s.views.reduce((mask, v) => mask | (1 << v), 0)),

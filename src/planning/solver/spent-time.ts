@@ -120,7 +120,8 @@ export function earliestEnvelope(times: readonly Distribution[]): Distribution {
 
 /**
  * Certainty equivalent of a time at rate theta per second: -ln E[exp(-theta T)] / theta. Additive over
- * independent times, between the least value (theta large) and the mean (theta small).
+ * independent times, between the least value (theta large) and the mean (theta near 0); for theta below
+ * zero between the mean and the greatest value.
  */
 export function equivalentS(time: SparseTime, theta: number): number {
   if (theta === Infinity) return time.leastS;
@@ -134,7 +135,7 @@ export function equivalentS(time: SparseTime, theta: number): number {
     atS += gapS;
     sum += time.mass[k]! * factor;
   }
-  return time.leastS - Math.log(Math.min(1, sum)) / theta;
+  return time.leastS - Math.log(sum) / theta;
 }
 
 /**
@@ -168,4 +169,22 @@ export function roomS(
     growth *= step;
   }
   return highest === 0 ? -Infinity : Math.log(highest / confidence) / theta;
+}
+
+/**
+ * The counterpart that suffices: for any independent time R, equivalent(R) at `-theta` <= sure room implies
+ * P(curve's time + R <= slot) >= confidence. Method: 1 - F(slot - r) <= K exp(theta r) for all r >= 0
+ * (the same exponential bound from the other side).
+ */
+export function sureRoomS(curve: Cumulative, confidence: number, theta: number): number {
+  const slotS = curve.length - 1;
+  const step = Math.exp(-theta);
+  let shrink = 1;
+  let highest = 0;
+  for (let r = 0; r <= slotS; r++) {
+    const bound = (1 - curve[slotS - r]!) * shrink;
+    if (bound > highest) highest = bound;
+    shrink *= step;
+  }
+  return Math.log((1 - confidence) / Math.max(highest, shrink)) / theta;
 }
