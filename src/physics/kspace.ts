@@ -88,9 +88,25 @@ export function planKSpace(request: KSpaceRequest): KSpacePlan {
   };
 }
 
-/** Weight of every line: the amplitude of the echo it was read at. */
+/**
+ * Weight of every line: the amplitude of the echo it was read at. Where one side is filled by conjugate
+ * symmetry, the lines that were read on both sides are merged with a ramp across the centre, as
+ * homodyne reconstruction of a phase-corrected image does (Noll 1991): the weights come out symmetric.
+ */
 export function lineWeights(plan: KSpacePlan, echoes: Float64Array): Float64Array {
-  return Float64Array.from(plan.echoOfLine, (echo) => echoes[echo] ?? 0);
+  const weights = Float64Array.from(plan.echoOfLine, (echo) => echoes[echo] ?? 0);
+  if (plan.conjugateFilled === 0) return weights;
+  const centre = Math.floor(plan.phaseLines / 2);
+  const overscan = centre - plan.conjugateFilled;
+  for (let k = 1; k <= overscan; k++) {
+    const ramp = k / (overscan + 1);
+    const near = weights[centre - k] ?? 0;
+    const far = weights[centre + k] ?? near;
+    const merged = ((1 + ramp) * far + (1 - ramp) * near) / 2;
+    weights[centre - k] = merged;
+    if (centre + k < weights.length) weights[centre + k] = merged;
+  }
+  return weights;
 }
 
 /** Every R-th line counted from the centre; for a fractional factor the nearest line to each multiple. */
