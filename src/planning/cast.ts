@@ -35,7 +35,10 @@ export interface Candidate {
   readonly clean: CleanChance;
   /** Per asked question that needs this view, by id. */
   readonly answers: ReadonlyMap<string, GradedAnswer>;
-  /** Whole percent of the full-quality image, times the chance that it comes out clean. */
+  /**
+   * Percent of the full-quality image times the chance that it comes out clean, in steps of ten: finer
+   * differences are nobody's to see and must not cost minutes or breath-holds.
+   */
   readonly quality: number;
 }
 
@@ -179,6 +182,6 @@ function gradedCandidate(
     time,
     clean,
     answers,
-    quality: Math.round(100 * share * clean.clean),
+    quality: 10 * Math.round(10 * share * clean.clean),
   };
 }

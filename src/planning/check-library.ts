@@ -108,6 +108,7 @@ function sequenceProblems(sequence: Sequence): Problem[] {
   const time = scanTime(sequence, untroubledBreathing);
   if (time.kind === 'impossible') return [time.problem];
   if (sequence.family !== 'single-shot' || sequence.breathing === 'triggered') return [];
+  if (sequence.inversionTimeMs !== undefined) return [];
   const sliceS = time.repetitionTimeMs / 1000;
   if (sequence.dimensions === 3 || sequence.plane === 'slab' || (sliceS >= 0.3 && sliceS <= 1.1))
     return [];

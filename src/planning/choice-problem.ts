@@ -3,6 +3,7 @@ import type { ToleranceProfile } from '../tolerance/index.js';
 import type { Cast } from './cast.js';
 import { atSeconds, convolve, lognormal } from './distribution.js';
 import type { ChoiceProblem, SharedTime } from './solver/problem.js';
+import { pointsApartS } from './table-time.js';
 import { candidateTime, nominalS, type FixedTime } from './table-parts.js';
 
 /**
@@ -68,7 +69,7 @@ function injectionTime(cast: Cast, policy: SitePolicy): SharedTime[] {
     {
       views: after,
       nominalS: Math.ceil(meanS + waitS),
-      time: convolve(lognormal(meanS, cv), atSeconds(waitS)),
+      time: convolve(lognormal(meanS, cv, pointsApartS(meanS * cv)), atSeconds(waitS)),
     },
   ];
 }

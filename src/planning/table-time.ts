@@ -43,7 +43,9 @@ export function sequenceTime(step: TimedStep): Distribution {
     });
   }
   const whole =
-    variation === undefined ? atSeconds(acquisitionS) : lognormal(acquisitionS, variation);
+    variation === undefined
+      ? atSeconds(acquisitionS)
+      : lognormal(acquisitionS, variation, pointsApartS(acquisitionS * variation));
   const run =
     retake === undefined
       ? whole
@@ -54,4 +56,9 @@ export function sequenceTime(step: TimedStep): Distribution {
     { weight: 1 - repeatChance, of: once },
     { weight: repeatChance, of: convolve(once, once) },
   ]);
+}
+
+/** An eighth of the standard deviation: fine enough that the variance grows by a quarter of a percent. */
+export function pointsApartS(deviationS: number): number {
+  return Math.max(1, Math.floor(deviationS / 8));
 }

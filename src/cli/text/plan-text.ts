@@ -23,7 +23,7 @@ export function planText(plan: Plan, heading: PlanHeading): string {
     ' Answers',
     ...plan.answers.map((a) => answerText(a, true)),
     '',
-    ' Running order          (minutes since entry; chance of clean images)',
+    ' Running order (starts at, takes, chance of clean images)',
     ...stepLines(plan),
     ...listed(
       ' Not run',
@@ -72,16 +72,17 @@ function headingLines(plan: Plan, heading: PlanHeading): string[] {
 
 function answerText(answer: PlannedAnswer, full: boolean): string {
   const words = paint[answer.grade](answer.words);
-  const lines = [` ${answer.mark.padEnd(5)}${fitted(answer.name, 30)} ${words}`];
+  const heading = `${answer.mark.padEnd(5)}${answer.name}: ${words}`;
+  const lines = [wrapped(heading, ' ', '      ')];
   if (answer.conditional !== undefined)
-    lines.push(wrapped(`Condition: ${answer.conditional}.`, '        ', '        '));
+    lines.push(wrapped(`Condition: ${answer.conditional}.`, '      ', '      '));
   if (answer.grade !== 'diagnostic') {
-    lines.push(wrapped(answer.because, '        ', '        '));
+    lines.push(wrapped(answer.because, '      ', '      '));
     if (full && answer.notExcluded !== undefined) {
-      lines.push(wrapped(`Not excluded: ${answer.notExcluded}`, '        ', '        '));
+      lines.push(wrapped(`Not excluded: ${answer.notExcluded}`, '      ', '      '));
     }
     const lifts = full ? answer.lifts : answer.lifts.slice(0, 1);
-    for (const lift of lifts) lines.push(wrapped(`> ${lift.sentence}`, '        ', '          '));
+    for (const lift of lifts) lines.push(wrapped(`> ${lift.sentence}`, '      ', '        '));
   }
   return lines.join('\n');
 }
@@ -89,7 +90,7 @@ function answerText(answer: PlannedAnswer, full: boolean): string {
 function stepLines(plan: Plan): string[] {
   return plan.steps.map((step) => {
     const chance = step.cleanChance === undefined ? '' : percent(step.cleanChance);
-    const first = `  ${minSec(step.startS).padStart(6)}  ${fitted(step.name, 48)} ${minSec(step.endS - step.startS).padStart(6)}  ${chance.padStart(6)}`;
+    const first = `  ${minSec(step.startS).padStart(6)}  ${fitted(step.name, 52)} ${minSec(step.endS - step.startS).padStart(6)}  ${chance.padStart(6)}`;
     return step.stillness === undefined
       ? first
       : `${first}\n          ${colour.dim(step.stillness)}`;
@@ -97,7 +98,6 @@ function stepLines(plan: Plan): string[] {
 }
 
 function curveLines(plan: Plan): string[] {
-  const names = plan.answers.map((a) => a.name);
   const seen = new Map<string, Plan['curve'][number]>();
   for (const point of plan.curve) {
     const key = point.grades.map((g) => g.grade).join('|');
@@ -105,11 +105,27 @@ function curveLines(plan: Plan): string[] {
   }
   if (seen.size < 2) return [];
   const lines = [...seen.values()].map((point) => {
-    const grades = point.grades.map((g, n) => `${names[n]}: ${g.words}`).join('; ');
     const asked = point.slotS === plan.slotS ? ' (asked)' : '';
-    return wrapped(`from ${minutesOf(point.slotS)}${asked}: ${grades}`, '  ', '      ');
+    return wrapped(
+      `${minutesOf(point.slotS).padStart(7)}${asked}: ${gradesInWords(plan, point.grades)}`,
+      ' ',
+      '          ',
+    );
   });
-  return ['', ' What more minutes would buy', ...lines];
+  return ['', ' What more minutes would buy: from', ...lines];
+}
+
+/** Questions gathered under their grade: "diagnostic: A, B; not answered: C". */
+function gradesInWords(plan: Plan, grades: Plan['curve'][number]['grades']): string {
+  const byWords = new Map<string, string[]>();
+  grades.forEach((g, n) => {
+    const names = byWords.get(g.words) ?? [];
+    names.push(plan.answers[n]?.name ?? g.questionId);
+    byWords.set(g.words, names);
+  });
+  if (byWords.size === 1)
+    return `everything ${[...byWords.keys()][0]}`.replace('everything not', 'nothing');
+  return [...byWords].map(([words, names]) => `${names.join(', ')}: ${words}`).join('; ');
 }
 
 function alternativeLines(plan: Plan): string[] {
@@ -123,9 +139,7 @@ function alternativeLines(plan: Plan): string[] {
   lines.push(`A slot longer than ${minutesOf(nothingMoreAfterS)} buys nothing more.`);
   if (twoVisits !== undefined) {
     lines.push(
-      `Two visits of ${minutesOf(plan.slotS)}: the second runs ${twoVisits.secondVisit.join('; ')}. Then: ${twoVisits.grades
-        .map((g, n) => `${plan.answers[n]?.name ?? g.questionId}: ${g.words}`)
-        .join('; ')}.`,
+      `Two visits of ${minutesOf(plan.slotS)}: the second runs ${twoVisits.secondVisit.join('; ')}. Then ${gradesInWords(plan, twoVisits.grades)}.`,
     );
   }
   return listed(' Alternatives', lines);
