@@ -6,7 +6,5 @@ import { print } from './cli/output.js';
 
 /** Until there are pages: plans the demo department and prints it. */
 const department = openDepartment();
-print(
-  `${department.name} (invented): ${department.scanners.map((s) => s.name).join(', ')}; ${department.days.join(', ')}\n`,
-);
+print(`${department.name}\n`);
 process.exitCode = await planFile(join(demoFolder, 'requests.csv'), {});

@@ -1,5 +1,6 @@
 import {
   checkLimits,
+  familyWords,
   refusalOf,
   type Assessment,
   type ComputedAssessment,
@@ -53,7 +54,7 @@ function catalogueFactors(
     {
       kind: 'catalogue',
       grade: rule.atMost,
-      sentence: `The site policy lets ${sequence.family.replaceAll('-', ' ')} answer this at most as ${gradeWords[rule.atMost]}${signed}.`,
+      sentence: `The site policy counts ${familyWords[sequence.family]} for this question at most as ${gradeWords[rule.atMost]}${signed}.`,
       source: rule.basis,
     },
   ];
@@ -103,7 +104,7 @@ function limitFactors(view: View, sequence: Sequence): GradeFactor[] {
     factors.push({
       kind: 'limits',
       grade: 'screening',
-      sentence: `A published standard does not accept ${sequence.dimensions}D ${sequence.family.replaceAll('-', ' ')} for ${view.name}.`,
+      sentence: `A published standard does not accept ${familyWords[sequence.family]} (${sequence.dimensions}D) for ${view.name}.`,
       source: refusal.source,
     });
   }

@@ -13,6 +13,10 @@ export function alternativesOf(
   const points = [...choices];
   const full = points.find(([, choice]) => choice.ranks.every((rank) => rank === 3));
   const last = points[points.length - 1];
+  const asked = choices.get(prepared.request.slotS);
+  const same = points.find(([, choice]) =>
+    choice.ranks.every((rank, n) => rank >= (asked?.ranks[n] ?? 0)),
+  );
   const settled =
     last === undefined
       ? undefined
@@ -21,6 +25,7 @@ export function alternativesOf(
     ...(full === undefined
       ? { noneBecause: noneBecause(prepared, last?.[1]) }
       : { shortestAllDiagnosticS: full[0] }),
+    sameGradesFromS: same?.[0] ?? prepared.request.slotS,
     nothingMoreAfterS: settled?.[0] ?? prepared.request.slotS,
     ...(visit === undefined
       ? {}

@@ -92,6 +92,8 @@ export interface Alternatives {
   readonly shortestAllDiagnosticS?: number;
   /** Why there is none. */
   readonly noneBecause?: string;
+  /** Shortest slot (5-minute steps) that gives every question the grade it has in the asked one. */
+  readonly sameGradesFromS: number;
   /** Shortest slot beyond which a longer one buys nothing more. */
   readonly nothingMoreAfterS: number;
   /** Two visits in slots of the asked length. */

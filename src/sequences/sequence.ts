@@ -18,6 +18,16 @@ export const families: readonly Family[] = [
   'diffusion-epi',
 ];
 
+/** Families in words that fit into a sentence: "a single-shot image". */
+export const familyWords: Readonly<Record<Family, string>> = {
+  'spin-echo': 'a spin-echo image',
+  'fast-spin-echo': 'a fast spin-echo image',
+  'single-shot': 'a single-shot image',
+  'radial-fast-spin-echo': 'a rotating-blade fast spin-echo image',
+  'gradient-echo': 'a gradient-echo image',
+  'diffusion-epi': 'a diffusion image',
+};
+
 /** Contrast mechanism. A view asks for one; a sequence has one. */
 export type Weighting =
   | 'T1'

@@ -23,6 +23,6 @@ export function minSec(seconds: number): string {
 }
 
 export const percent = (p: number): string =>
-  p > 0.995 && p < 1 ? '>99 %' : p > 0 && p < 0.005 ? '<1 %' : `${Math.round(p * 100)} %`;
+  p > 0.995 ? '>99 %' : p > 0 && p < 0.005 ? '<1 %' : `${Math.round(p * 100)} %`;
 
 export const minutesOf = (seconds: number): string => `${Math.round(seconds / 60)} min`;

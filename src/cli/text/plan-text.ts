@@ -48,7 +48,7 @@ export function planBrief(plan: Plan, heading: PlanHeading): string {
   return [
     ...headingLines(plan, heading),
     ...plan.answers.map((a) => answerText(a, false)),
-    wrapped(order === '' ? 'Nothing can be run.' : `Order: ${order}.`, '   ', '   '),
+    ...(order === '' ? [] : [wrapped(`Order: ${order}.`, '   ', '   ')]),
     ...plan.cautions
       .filter((c) => /undecided|not done yet|not approved/.test(c))
       .map((c) => wrapped(`! ${c}`, '   ', '     ')),
@@ -60,13 +60,21 @@ function headingLines(plan: Plan, heading: PlanHeading): string[] {
   const left = `${plan.requestId}  ${plan.exam.name}`;
   const { tenthS, medianS, ninetiethS } = plan.tableTime;
   const holds = plan.chanceToFinish >= plan.wishedChance;
-  const time = `${percent(plan.chanceToFinish)} chance to end inside its ${minutesOf(plan.slotS)} slot${holds ? '' : ` (wished: ${percent(plan.wishedChance)})`}; table time ${minutesOf(medianS)}, 8 in 10 between ${minutesOf(tenthS)} and ${minutesOf(ninetiethS)}`;
+  const { sameGradesFromS } = plan.alternatives;
+  const shorter =
+    holds && sameGradesFromS < plan.slotS && plan.steps.length > 1
+      ? ` (${minutesOf(sameGradesFromS)} would give the same grades)`
+      : '';
+  const empty = plan.steps.length === 1;
+  const time = empty
+    ? `Nothing fits into its ${minutesOf(plan.slotS)} slot: getting in and out alone takes ${minutesOf(tenthS)} to ${minutesOf(ninetiethS)}`
+    : `${percent(plan.chanceToFinish)} chance to end inside its ${minutesOf(plan.slotS)} slot${holds ? shorter : ` (wished: ${percent(plan.wishedChance)})`}; table time ${minutesOf(medianS)}, 8 in 10 between ${minutesOf(tenthS)} and ${minutesOf(ninetiethS)}`;
   const oneLine = left.length + right.length + 2 <= pageWidth;
   return [
     oneLine
       ? colour.bold(left) + right.padStart(pageWidth - left.length)
       : `${colour.bold(left)}\n   ${right}`,
-    wrapped(holds ? time : `! ${time}`, '   '),
+    wrapped(holds && !empty ? time : `! ${time}`, '   '),
   ];
 }
 
