@@ -1,4 +1,4 @@
-import { ProblemError } from '../shared/problem.js';
+import { ProblemError } from '../shared/index.js';
 
 /**
  * Probability mass on whole seconds. `p[i]` is P(T = startS + i); the masses sum to 1. Sums of

@@ -1,4 +1,4 @@
-import { ProblemError } from '../shared/problem.js';
+import { ProblemError } from '../shared/index.js';
 
 /** Something that takes the scanner for a while: a sequence or the injection. Seconds throughout. */
 export interface OrderItem {

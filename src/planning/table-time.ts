@@ -1,4 +1,4 @@
-import { ProblemError } from '../shared/problem.js';
+import { ProblemError } from '../shared/index.js';
 import {
   atSeconds,
   convolve,

@@ -1,4 +1,4 @@
-import { ProblemError } from '../../shared/problem.js';
+import { ProblemError } from '../../shared/index.js';
 import { earliestEnvelope, equivalentS, sparseTime, type SparseTime } from './spent-time.js';
 import type { ChoiceProblem } from './problem.js';
 
