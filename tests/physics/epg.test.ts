@@ -11,27 +11,90 @@ const lossless = (refocusingDeg: readonly number[]) =>
 
 describe('echo amplitudes without relaxation', () => {
   // Derived three ways in the checks, section 2 (leading coefficients are the Catalan numbers).
-  it.each([30, 60, 90, 120, 150, 170, 180])('closed forms in q = sin^2(a/2) hold at %d degrees', (deg) => {
-    const q = Math.sin((deg * Math.PI) / 360) ** 2;
-    const closed = [
-      q,
-      2 * q - q ** 2,
-      3 * q - 4 * q ** 2 + 2 * q ** 3,
-      4 * q - 10 * q ** 2 + 12 * q ** 3 - 5 * q ** 4,
-      5 * q - 20 * q ** 2 + 42 * q ** 3 - 40 * q ** 4 + 14 * q ** 5,
-      6 * q - 35 * q ** 2 + 112 * q ** 3 - 180 * q ** 4 + 140 * q ** 5 - 42 * q ** 6,
-    ];
-    const echoes = lossless(constant(deg, 6));
-    closed.forEach((value, n) => expect(echoes[n]).toBeCloseTo(value, 10));
-  });
+  it.each([30, 60, 90, 120, 150, 170, 180])(
+    'closed forms in q = sin^2(a/2) hold at %d degrees',
+    (deg) => {
+      const q = Math.sin((deg * Math.PI) / 360) ** 2;
+      const closed = [
+        q,
+        2 * q - q ** 2,
+        3 * q - 4 * q ** 2 + 2 * q ** 3,
+        4 * q - 10 * q ** 2 + 12 * q ** 3 - 5 * q ** 4,
+        5 * q - 20 * q ** 2 + 42 * q ** 3 - 40 * q ** 4 + 14 * q ** 5,
+        6 * q - 35 * q ** 2 + 112 * q ** 3 - 180 * q ** 4 + 140 * q ** 5 - 42 * q ** 6,
+      ];
+      const echoes = lossless(constant(deg, 6));
+      closed.forEach((value, n) => expect(echoes[n]).toBeCloseTo(value, 10));
+    },
+  );
 
   // Table of the checks, section 2; printed to five places.
   it.each([
-    [150, [0.93301, 0.99551, 0.94139, 0.98435, 0.95391, 0.97198, 0.96479, 0.96361, 0.9701, 0.96137, 0.96971, 0.96362]],
-    [120, [0.75, 0.9375, 0.84375, 219 / 256, 453 / 512, 1755 / 2048, 0.86206, 0.87529, 0.86085, 0.86386, 0.87176, 0.86259]],
-    [90, [0.5, 0.75, 0.75, 0.6875, 0.6875, 23 / 32, 0.71875, 0.69922, 0.69922, 0.71289, 0.71289, 0.70264]],
-    [60, [0.25, 0.4375, 17 / 32, 139 / 256, 263 / 512, 995 / 2048, 0.48071, 0.49394, 0.50838, 0.5114, 0.5035, 0.49433]],
-    [30, [0.06699, 0.12949, 0.18361, 0.22658, 0.25703, 0.2751, 0.28228, 0.28111, 0.27462, 0.26589, 0.25755, 0.25146]],
+    [
+      150,
+      [
+        0.93301, 0.99551, 0.94139, 0.98435, 0.95391, 0.97198, 0.96479, 0.96361, 0.9701, 0.96137,
+        0.96971, 0.96362,
+      ],
+    ],
+    [
+      120,
+      [
+        0.75,
+        0.9375,
+        0.84375,
+        219 / 256,
+        453 / 512,
+        1755 / 2048,
+        0.86206,
+        0.87529,
+        0.86085,
+        0.86386,
+        0.87176,
+        0.86259,
+      ],
+    ],
+    [
+      90,
+      [
+        0.5,
+        0.75,
+        0.75,
+        0.6875,
+        0.6875,
+        23 / 32,
+        0.71875,
+        0.69922,
+        0.69922,
+        0.71289,
+        0.71289,
+        0.70264,
+      ],
+    ],
+    [
+      60,
+      [
+        0.25,
+        0.4375,
+        17 / 32,
+        139 / 256,
+        263 / 512,
+        995 / 2048,
+        0.48071,
+        0.49394,
+        0.50838,
+        0.5114,
+        0.5035,
+        0.49433,
+      ],
+    ],
+    [
+      30,
+      [
+        0.06699, 0.12949, 0.18361, 0.22658, 0.25703, 0.2751, 0.28228, 0.28111, 0.27462, 0.26589,
+        0.25755, 0.25146,
+      ],
+    ],
   ])('the published-checks table holds at %d degrees', (deg, row) => {
     const echoes = lossless(constant(deg, 12));
     row.forEach((value, n) => expect(Math.abs((echoes[n] ?? 0) - value)).toBeLessThan(6e-6));
@@ -39,7 +102,10 @@ describe('echo amplitudes without relaxation', () => {
 
   it('a first angle halfway to 180 steadies the train', () => {
     const echoes = lossless([150, ...constant(120, 11)]);
-    const row = [0.93301, 0.91627, 0.94139, 0.91941, 0.9304, 0.93079, 0.9247, 0.92962, 0.9293, 0.92624, 0.92916, 0.92882];
+    const row = [
+      0.93301, 0.91627, 0.94139, 0.91941, 0.9304, 0.93079, 0.9247, 0.92962, 0.9293, 0.92624,
+      0.92916, 0.92882,
+    ];
     row.forEach((value, n) => expect(Math.abs((echoes[n] ?? 0) - value)).toBeLessThan(6e-6));
   });
 
@@ -70,15 +136,47 @@ describe('echo amplitudes without relaxation', () => {
 
 describe('echo amplitudes with relaxation', () => {
   it('perfect 180s decay with T2 alone', () => {
-    const echoes = echoAmplitudes({ t1Ms: 1084, t2Ms: 69, echoSpacingMs: 10, refocusingDeg: constant(180, 64) });
+    const echoes = echoAmplitudes({
+      t1Ms: 1084,
+      t2Ms: 69,
+      echoSpacingMs: 10,
+      refocusingDeg: constant(180, 64),
+    });
     echoes.forEach((e, n) => expect(e).toBeCloseTo(Math.exp((-(n + 1) * 10) / 69), 12));
   });
 
   // Rows of the checks, section 2.
   it.each([
-    [120, 1084, 69, 10, [0.64881, 0.74239, 0.56133, 0.52291, 0.46112, 0.40544, 0.34509, 0.32504, 0.26564, 0.24848, 0.21005, 0.19282]],
-    [180, 1084, 69, 10, [0.86508, 0.74837, 0.64741, 0.56006, 0.4845, 0.41913, 0.36259, 0.31367, 0.27135, 0.23474, 0.20307, 0.17567]],
-    [120, 809, 34, 5, [0.64743, 0.74089, 0.55825, 0.52033, 0.45744, 0.4023, 0.34118, 0.32182, 0.26176, 0.24537, 0.20644, 0.18993]],
+    [
+      120,
+      1084,
+      69,
+      10,
+      [
+        0.64881, 0.74239, 0.56133, 0.52291, 0.46112, 0.40544, 0.34509, 0.32504, 0.26564, 0.24848,
+        0.21005, 0.19282,
+      ],
+    ],
+    [
+      180,
+      1084,
+      69,
+      10,
+      [
+        0.86508, 0.74837, 0.64741, 0.56006, 0.4845, 0.41913, 0.36259, 0.31367, 0.27135, 0.23474,
+        0.20307, 0.17567,
+      ],
+    ],
+    [
+      120,
+      809,
+      34,
+      5,
+      [
+        0.64743, 0.74089, 0.55825, 0.52033, 0.45744, 0.4023, 0.34118, 0.32182, 0.26176, 0.24537,
+        0.20644, 0.18993,
+      ],
+    ],
   ])('%d degrees, T1 %d, T2 %d, spacing %d', (deg, t1Ms, t2Ms, echoSpacingMs, row) => {
     const echoes = echoAmplitudes({ t1Ms, t2Ms, echoSpacingMs, refocusingDeg: constant(deg, 12) });
     row.forEach((value, n) => expect(Math.abs((echoes[n] ?? 0) - value)).toBeLessThan(6e-6));
@@ -88,7 +186,12 @@ describe('echo amplitudes with relaxation', () => {
     // Checks, section 2, white matter 832/79.6.
     const at = [1, 2, 10, 25, 64, 128];
     const train = (deg: number) =>
-      echoAmplitudes({ t1Ms: 832, t2Ms: 79.6, echoSpacingMs: 4, refocusingDeg: constant(deg, 128) });
+      echoAmplitudes({
+        t1Ms: 832,
+        t2Ms: 79.6,
+        echoSpacingMs: 4,
+        refocusingDeg: constant(deg, 128),
+      });
     const low = train(120);
     const full = train(180);
     [0.71324, 0.86363, 0.55685, 0.28306, 0.05261, 0.00355].forEach((v, i) =>
@@ -106,7 +209,9 @@ describe('echo amplitudes with relaxation', () => {
     const angles = [70, 140, 30, 95, 180, 60, 120, 85];
     const free = lossless(angles);
     const damped = echoAmplitudes({ t1Ms: 90, t2Ms: 90, echoSpacingMs: 10, refocusingDeg: angles });
-    damped.forEach((e, n) => expect(e).toBeCloseTo((free[n] ?? 0) * Math.exp((-(n + 1) * 10) / 90), 12));
+    damped.forEach((e, n) =>
+      expect(e).toBeCloseTo((free[n] ?? 0) * Math.exp((-(n + 1) * 10) / 90), 12),
+    );
   });
 });
 
@@ -114,7 +219,10 @@ const randomTrain = fc.record({
   t1Ms: fc.double({ min: 200, max: 4500, noNaN: true }),
   t2Ms: fc.double({ min: 15, max: 2000, noNaN: true }),
   echoSpacingMs: fc.double({ min: 2, max: 20, noNaN: true }),
-  refocusingDeg: fc.array(fc.double({ min: 0, max: 200, noNaN: true }), { minLength: 1, maxLength: 24 }),
+  refocusingDeg: fc.array(fc.double({ min: 0, max: 200, noNaN: true }), {
+    minLength: 1,
+    maxLength: 24,
+  }),
   excitationDeg: fc.double({ min: 10, max: 120, noNaN: true }),
   b1Scale: fc.double({ min: 0.6, max: 1.3, noNaN: true }),
 });
@@ -169,7 +277,10 @@ describe('steady state', () => {
 
   it('refuses a train that does not fit, naming both times', () => {
     const run = () =>
-      steadyStateEchoes({ t1Ms: 800, t2Ms: 80, echoSpacingMs: 10, refocusingDeg: constant(180, 50) }, { repetitionTimeMs: 400 });
+      steadyStateEchoes(
+        { t1Ms: 800, t2Ms: 80, echoSpacingMs: 10, refocusingDeg: constant(180, 50) },
+        { repetitionTimeMs: 400 },
+      );
     expect(run).toThrow(ProblemError);
     expect(run).toThrow(/400 ms; the train takes 500 ms/);
   });

@@ -2,7 +2,16 @@ import { describe, expect, it } from 'vitest';
 import { planKSpace, type KSpaceRequest } from '../../src/physics/index.js';
 
 const plan = (given: Partial<KSpaceRequest>) =>
-  planKSpace({ phaseLines: 256, partialFourier: 1, parallelFactor: 1, referenceLines: 0, echoTrainLength: 16, order: 'linear', echoSpacingMs: 10, ...given });
+  planKSpace({
+    phaseLines: 256,
+    partialFourier: 1,
+    parallelFactor: 1,
+    referenceLines: 0,
+    echoTrainLength: 16,
+    order: 'linear',
+    echoSpacingMs: 10,
+    ...given,
+  });
 
 describe('which echo fills which line', () => {
   it('half-Fourier: 9/16 of 256 lines are 144, 16 of overscan, effective echo time 68 ms at spacing 4', () => {
@@ -17,7 +26,12 @@ describe('which echo fills which line', () => {
     const wide = plan({ order: 'single-shot', partialFourier: 0.6, echoSpacingMs: 4 });
     expect([wide.acquiredLines, wide.effectiveEchoTimeMs]).toEqual([154, 108]);
     // 153 lines: the centre is line 76, so 92 lines from 61 on hold 15 before the centre; the checks round to 16.
-    const fetal = plan({ order: 'single-shot', phaseLines: 153, partialFourier: 0.601, echoSpacingMs: 4 });
+    const fetal = plan({
+      order: 'single-shot',
+      phaseLines: 153,
+      partialFourier: 0.601,
+      echoSpacingMs: 4,
+    });
     expect(fetal.acquiredLines).toBe(92);
     expect(fetal.centreEcho).toBe(15);
   });

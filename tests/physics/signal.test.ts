@@ -25,9 +25,42 @@ const simulated = {
 describe('spin echo', () => {
   // Table of the checks, section 7: simple (exact) signal for the simulated-brain tissues.
   const rows: [number, number, Record<keyof typeof simulated, [number, number]>][] = [
-    [500, 15, { csf: [0.169, 0.1644], gm: [0.324, 0.3168], wm: [0.3929, 0.3859], fat: [0.6137, 0.6053], muscle: [0.3098, 0.3028], lesion: [0.3465, 0.3391] }],
-    [3000, 15, { csf: [0.6582, 0.6565], gm: [0.6982, 0.6979], wm: [0.6199, 0.6199], fat: [0.807, 0.807], muscle: [0.7008, 0.7004], lesion: [0.7002, 0.6999] }],
-    [3000, 100, { csf: [0.5084, 0.4993], gm: [0.2507, 0.2499], wm: [0.1841, 0.184], fat: [0.2396, 0.2396], muscle: [0.1149, 0.1144], lesion: [0.4892, 0.4879] }],
+    [
+      500,
+      15,
+      {
+        csf: [0.169, 0.1644],
+        gm: [0.324, 0.3168],
+        wm: [0.3929, 0.3859],
+        fat: [0.6137, 0.6053],
+        muscle: [0.3098, 0.3028],
+        lesion: [0.3465, 0.3391],
+      },
+    ],
+    [
+      3000,
+      15,
+      {
+        csf: [0.6582, 0.6565],
+        gm: [0.6982, 0.6979],
+        wm: [0.6199, 0.6199],
+        fat: [0.807, 0.807],
+        muscle: [0.7008, 0.7004],
+        lesion: [0.7002, 0.6999],
+      },
+    ],
+    [
+      3000,
+      100,
+      {
+        csf: [0.5084, 0.4993],
+        gm: [0.2507, 0.2499],
+        wm: [0.1841, 0.184],
+        fat: [0.2396, 0.2396],
+        muscle: [0.1149, 0.1144],
+        lesion: [0.4892, 0.4879],
+      },
+    ],
   ];
   for (const [repetitionTimeMs, echoTimeMs, expected] of rows) {
     for (const name of Object.keys(expected) as (keyof typeof simulated)[]) {
@@ -38,7 +71,10 @@ describe('spin echo', () => {
         expect(Math.abs(spinEchoSignal(s) - simple)).toBeLessThan(6e-5);
         expect(Math.abs(spinEchoSignalExact(s) - exact)).toBeLessThan(6e-5);
         // The phase graph with one perfect echo must be the exact form.
-        const { echoes } = steadyStateEchoes({ t1Ms, t2Ms, echoSpacingMs: echoTimeMs, refocusingDeg: [180] }, { repetitionTimeMs });
+        const { echoes } = steadyStateEchoes(
+          { t1Ms, t2Ms, echoSpacingMs: echoTimeMs, refocusingDeg: [180] },
+          { repetitionTimeMs },
+        );
         expect(protonDensity * (echoes[0] ?? 0)).toBeCloseTo(spinEchoSignalExact(s), 5);
       });
     }
@@ -64,9 +100,17 @@ describe('inversion null', () => {
   });
   it('really nulls the steady-state train', () => {
     // A perfect-180 train of even length leaves no longitudinal magnetisation: recovery starts at its end.
-    const train = { t1Ms: 4300, t2Ms: 1900, echoSpacingMs: 10, refocusingDeg: new Array<number>(20).fill(180) };
+    const train = {
+      t1Ms: 4300,
+      t2Ms: 1900,
+      echoSpacingMs: 10,
+      refocusingDeg: new Array<number>(20).fill(180),
+    };
     const inversionTimeMs = inversionNullMs(4300, 9000, 200);
-    const { echoes } = steadyStateEchoes(train, { repetitionTimeMs: 9000, inversion: { inversionTimeMs } });
+    const { echoes } = steadyStateEchoes(train, {
+      repetitionTimeMs: 9000,
+      inversion: { inversionTimeMs },
+    });
     expect(Math.abs(echoes[0] ?? 1)).toBeLessThan(2e-3);
   });
 });

@@ -1,30 +1,53 @@
 import { describe, expect, it } from 'vitest';
-import { borderWidthMm, echoAmplitudes, lineWeights, planKSpace, spreadWidthMm, targetContrast, tissueAt } from '../../src/physics/index.js';
+import {
+  borderWidthMm,
+  echoAmplitudes,
+  lineWeights,
+  planKSpace,
+  spreadWidthMm,
+  targetContrast,
+  tissueAt,
+} from '../../src/physics/index.js';
 
 const lines = 2048;
 const u = (i: number) => (i - lines / 2) / lines;
-const linear = (tau: number) => Float64Array.from({ length: lines }, (_, i) => Math.exp(-tau * (u(i) + 0.5)));
-const centric = (tau: number) => Float64Array.from({ length: lines }, (_, i) => Math.exp(-2 * tau * Math.abs(u(i))));
+const linear = (tau: number) =>
+  Float64Array.from({ length: lines }, (_, i) => Math.exp(-tau * (u(i) + 0.5)));
+const centric = (tau: number) =>
+  Float64Array.from({ length: lines }, (_, i) => Math.exp(-2 * tau * Math.abs(u(i))));
 
 describe('point spread of a decaying train', () => {
   // Table of the checks, section 4 (derived by quadrature, printed to four places). Many lines stand in for the
   // continuum of the table.
   const taus = [0.25, 0.5, 1, 1.5, 2, 3, 4, 6, 8, 10, 12.8];
-  const linearPx = [1.2096, 1.2183, 1.2537, 1.3148, 1.4053, 1.7026, 2.2179, 3.3247, 4.4121, 5.5136, 7.0571];
-  const centricPx = [1.2518, 1.301, 1.4129, 1.5449, 1.6996, 2.0862, 2.5843, 3.8174, 5.0966, 6.3666, 8.1487];
+  const linearPx = [
+    1.2096, 1.2183, 1.2537, 1.3148, 1.4053, 1.7026, 2.2179, 3.3247, 4.4121, 5.5136, 7.0571,
+  ];
+  const centricPx = [
+    1.2518, 1.301, 1.4129, 1.5449, 1.6996, 2.0862, 2.5843, 3.8174, 5.0966, 6.3666, 8.1487,
+  ];
   const peak = [0.8848, 0.7869, 0.6321, 0.5179, 0.4323, 0.3167, 0.2454, 0.1663, 0.125, 0.1, 0.0781];
 
-  it.each(taus.map((tau, n) => [tau, linearPx[n] ?? 0] as const))('linear, tau %d: %d pixels', (tau, px) => {
-    expect(Math.abs(spreadWidthMm(linear(tau), 1) - px)).toBeLessThan(2e-3);
-  });
-  it.each(taus.map((tau, n) => [tau, centricPx[n] ?? 0] as const))('centric or conjugate-filled, tau %d: %d pixels', (tau, px) => {
-    expect(Math.abs(spreadWidthMm(centric(tau), 1) - px)).toBeLessThan(2e-3);
-  });
-  it.each(taus.map((tau, n) => [tau, peak[n] ?? 0] as const))('peak at tau %d is %d, (1 - e^-tau)/tau', (tau, value) => {
-    const mean = centric(tau).reduce((a, b) => a + b, 0) / lines;
-    expect(mean).toBeCloseTo(value, 3);
-    expect(value).toBeCloseTo((1 - Math.exp(-tau)) / tau, 3);
-  });
+  it.each(taus.map((tau, n) => [tau, linearPx[n] ?? 0] as const))(
+    'linear, tau %d: %d pixels',
+    (tau, px) => {
+      expect(Math.abs(spreadWidthMm(linear(tau), 1) - px)).toBeLessThan(2e-3);
+    },
+  );
+  it.each(taus.map((tau, n) => [tau, centricPx[n] ?? 0] as const))(
+    'centric or conjugate-filled, tau %d: %d pixels',
+    (tau, px) => {
+      expect(Math.abs(spreadWidthMm(centric(tau), 1) - px)).toBeLessThan(2e-3);
+    },
+  );
+  it.each(taus.map((tau, n) => [tau, peak[n] ?? 0] as const))(
+    'peak at tau %d is %d, (1 - e^-tau)/tau',
+    (tau, value) => {
+      const mean = centric(tau).reduce((a, b) => a + b, 0) / lines;
+      expect(mean).toBeCloseTo(value, 3);
+      expect(value).toBeCloseTo((1 - Math.exp(-tau)) / tau, 3);
+    },
+  );
 
   it('no decay gives the sinc width, 1.2067 pixels, in mm of the pixel', () => {
     expect(spreadWidthMm(new Float64Array(256).fill(0.3), 0.9)).toBeCloseTo(1.2067 * 0.9, 3);
@@ -37,17 +60,40 @@ describe('point spread of a decaying train', () => {
 });
 
 describe('trains of real tissues', () => {
-  const halfFourier = (spacingMs: number, phaseLines: number, partialFourier: number, tissue: string) => {
-    const plan = planKSpace({ phaseLines, partialFourier, parallelFactor: 1, referenceLines: 0, echoTrainLength: 999, order: 'single-shot', echoSpacingMs: spacingMs });
+  const halfFourier = (
+    spacingMs: number,
+    phaseLines: number,
+    partialFourier: number,
+    tissue: string,
+  ) => {
+    const plan = planKSpace({
+      phaseLines,
+      partialFourier,
+      parallelFactor: 1,
+      referenceLines: 0,
+      echoTrainLength: 999,
+      order: 'single-shot',
+      echoSpacingMs: spacingMs,
+    });
     const { t1Ms, t2Ms } = tissueAt(tissue, 3);
-    const echoes = echoAmplitudes({ t1Ms, t2Ms, echoSpacingMs: spacingMs, refocusingDeg: new Array<number>(plan.echoTrainLength).fill(180) });
+    const echoes = echoAmplitudes({
+      t1Ms,
+      t2Ms,
+      echoSpacingMs: spacingMs,
+      refocusingDeg: new Array<number>(plan.echoTrainLength).fill(180),
+    });
     return { plan, px: spreadWidthMm(lineWeights(plan, echoes), 1) };
   };
 
   it('half-Fourier, 256 lines, spacing 4: liver 9.59, white matter 4.10, grey matter 2.97, fluid 1.26 pixels', () => {
     // Derived, checks section 4, from centre to edge 512 ms. A few overscan lines read before the centre make the
     // conjugate-filled spread only nearly centric: 3 % is allowed for them.
-    for (const [tissue, px] of [['liver', 9.59], ['white matter', 4.1], ['grey matter', 2.97], ['csf', 1.26]] as const) {
+    for (const [tissue, px] of [
+      ['liver', 9.59],
+      ['white matter', 4.1],
+      ['grey matter', 2.97],
+      ['csf', 1.26],
+    ] as const) {
       const found = halfFourier(4, 256, 129 / 256, tissue).px;
       expect(found / px, tissue).toBeGreaterThan(0.97);
       expect(found / px, tissue).toBeLessThan(1.03);
@@ -100,13 +146,24 @@ describe('border between two tissues', () => {
     const a = Float64Array.from({ length: 256 }, (_, i) => Math.exp(-Math.abs(i - 128) / 200));
     const b = Float64Array.from({ length: 256 }, (_, i) => 0.4 * Math.exp(-Math.abs(i - 128) / 30));
     expect(borderWidthMm(a, b, 0.9)).toBeCloseTo(borderWidthMm(b, a, 0.9), 6);
-    expect(borderWidthMm(a, b, 0.9)).toBeCloseTo(borderWidthMm(a.map((v) => v * 7), b.map((v) => v * 7), 0.9), 6);
+    expect(borderWidthMm(a, b, 0.9)).toBeCloseTo(
+      borderWidthMm(
+        a.map((v) => v * 7),
+        b.map((v) => v * 7),
+        0.9,
+      ),
+      6,
+    );
   });
 
   it('is wider when the bright side is the one that decays', () => {
     const steady = flat(1);
-    const decaying = Float64Array.from({ length: 256 }, (_, i) => Math.exp(-Math.abs(i - 128) / 12));
-    expect(borderWidthMm(decaying, flat(0), 1)).toBeGreaterThan(2 * borderWidthMm(steady, flat(0), 1));
+    const decaying = Float64Array.from({ length: 256 }, (_, i) =>
+      Math.exp(-Math.abs(i - 128) / 12),
+    );
+    expect(borderWidthMm(decaying, flat(0), 1)).toBeGreaterThan(
+      2 * borderWidthMm(steady, flat(0), 1),
+    );
   });
 
   it('is nowhere between two equally bright tissues', () => {
@@ -115,10 +172,21 @@ describe('border between two tissues', () => {
 });
 
 describe('contrast of a round target', () => {
-  const target = Float64Array.from({ length: 256 }, (_, i) => 0.6 * Math.exp(-Math.abs(i - 128) / 60));
-  const background = Float64Array.from({ length: 256 }, (_, i) => 0.25 * Math.exp(-Math.abs(i - 128) / 30));
+  const target = Float64Array.from(
+    { length: 256 },
+    (_, i) => 0.6 * Math.exp(-Math.abs(i - 128) / 60),
+  );
+  const background = Float64Array.from(
+    { length: 256 },
+    (_, i) => 0.25 * Math.exp(-Math.abs(i - 128) / 30),
+  );
   const at = (diameterMm: number, sliceThicknessMm = 5) =>
-    targetContrast(target, background, { diameterMm, pixelPhaseMm: 0.9, pixelFrequencyMm: 0.9, sliceThicknessMm });
+    targetContrast(target, background, {
+      diameterMm,
+      pixelPhaseMm: 0.9,
+      pixelFrequencyMm: 0.9,
+      sliceThicknessMm,
+    });
 
   it('large: the plain difference at the centre of k-space', () => {
     expect(at(200)).toBeCloseTo(0.35, 2);
