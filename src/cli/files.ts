@@ -9,10 +9,10 @@ export const projectFolder = fileURLToPath(new URL('../../', import.meta.url));
 export const shippedLibraryFolder = join(projectFolder, 'src/exams/library');
 export const demoFolder = join(projectFolder, 'data-demo');
 
-/** A text file, or a problem that names it and says what to do. */
+/** A text file (`-`: standard input), or a problem that names it and says what to do. */
 export function readText(path: string): string {
   try {
-    return readFileSync(path, 'utf8');
+    return readFileSync(path === '-' ? 0 : path, 'utf8');
   } catch (error) {
     throw new ProblemError({
       code: 'file-unreadable',

@@ -1,3 +1,4 @@
+import { gradeWords, type Grade } from '../exams/index.js';
 import { sayProblem, type Problem } from '../shared/index.js';
 import { wrapped } from './text/layout.js';
 
@@ -23,14 +24,20 @@ export function print(text: string): void {
 }
 
 export function printJson(value: unknown): void {
-  print(JSON.stringify(value, finiteOnly, 2));
+  print(JSON.stringify(value, honest, 2));
 }
 
-/** JSON knows no infinity: it becomes a word, not a silent null. */
-function finiteOnly(_key: string, value: unknown): unknown {
+/**
+ * JSON knows no infinity: it becomes a word, not a silent null. And a grade below diagnostic never
+ * stands without its words: an object that holds one gets them beside it.
+ */
+function honest(_key: string, value: unknown): unknown {
   if (typeof value === 'number' && !Number.isFinite(value)) return String(value);
   if (value instanceof Float64Array) return Array.from(value);
-  return value;
+  if (value === null || typeof value !== 'object' || Array.isArray(value) || 'words' in value)
+    return value;
+  const low = Object.values(value).find((v): v is Grade => v === 'screening' || v === 'targeted');
+  return low === undefined ? value : { ...value, words: gradeWords[low] };
 }
 
 /** Problems go to standard error, so that what was done can still be piped on. */

@@ -80,7 +80,7 @@ export function addSequenceCommand(program: Command): void {
 /** A sequence of the library, or one given as a JSON file. */
 export function findSequence(name: string, fieldT: FieldT, folder?: string): Sequence {
   if (name === '-' || name.endsWith('.json')) {
-    const text = name === '-' ? readText('/dev/stdin') : readText(name);
+    const text = readText(name);
     const read = readRawSequence(parseJson(text, name));
     if (read.kind === 'ok') return read.value;
     throw new ProblemError(read.problems[0] as (typeof read.problems)[number]);
