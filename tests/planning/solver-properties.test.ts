@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { atSeconds, convolve } from '../../src/planning/distribution.js';
 import { chooseCurve, chooseExactly } from '../../src/planning/solver/exact.js';
+import { linearSolver } from '../../src/planning/solver/linear.js';
 import { compareObjectives, type ChoiceProblem } from '../../src/planning/solver/problem.js';
 import { withoutDominated } from '../../src/planning/solver/prune.js';
 import { bestByTryingAll, inventedExam, stream } from './instances.js';
@@ -134,6 +135,31 @@ describe('properties of the best choice', () => {
     expect(choice.picks.every((pick) => pick === -1)).toBe(true);
     expect(choice.chance).toBe(0);
     expect(choice.objective.nominalS).toBe(0);
+  });
+
+  // Source: definition of the problem; a view that was ruled out altogether.
+  it('leaves a question unanswered that needs a view there is none of, and answers the rest', async () => {
+    const linear = linearSolver({ wallClockMs: 10_000 });
+    for (const exam of exams.slice(0, 10)) {
+      const problem = {
+        ...exam,
+        questions: exam.questions.map((question, q) =>
+          q === 0 ? { ...question, needs: [-1, ...question.needs] } : question,
+        ),
+      };
+      const without = {
+        ...exam,
+        questions: exam.questions.map((question, q) =>
+          q === 0 ? { ...question, needs: [] } : question,
+        ),
+      };
+      const { objective } = chooseExactly(without);
+      expect(chooseExactly(problem).objective).toEqual(objective);
+      const picked = await linear.choose(problem);
+      expect(picked.objective).toEqual(objective);
+      expect(picked.provedBy).toMatch(/^linear programme/);
+    }
+    await linear.close();
   });
 
   // Source: by definition; an answer cut short may not call itself proved.

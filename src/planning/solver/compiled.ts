@@ -37,7 +37,16 @@ export const rates = [Infinity, 1 / 15, 1 / 60, 1 / 200, 1 / 600, 1 / 1800];
 export const sureRates = [1 / 30, 1 / 60, 1 / 120, 1 / 240, 1 / 480];
 
 /** @throws ProblemError for more than 30 views, or 30 candidates of one view */
-export function compiled(problem: ChoiceProblem): Compiled {
+export function compiled(given: ChoiceProblem): Compiled {
+  // A question that needs a view the problem does not have can never be answered; nor can one that needs none.
+  const problem = {
+    ...given,
+    questions: given.questions.map((question) =>
+      question.needs.every((v) => given.views[v] !== undefined)
+        ? question
+        : { ...question, needs: [] },
+    ),
+  };
   const { views, questions, shared } = problem;
   refuseMoreThan(mostBits, views.length, 'views of an exam');
   for (const view of views)

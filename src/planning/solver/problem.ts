@@ -33,7 +33,7 @@ export interface ChoiceQuestion {
   readonly id: string;
   /** Whole number 1..9. */
   readonly weight: number;
-  /** View indices, all needed. */
+  /** View indices, all needed; one that the problem does not have can never be met. */
   readonly needs: readonly number[];
 }
 
