@@ -9,6 +9,8 @@ export interface BenchCase {
   readonly name: string;
   readonly subject: () => unknown;
   readonly reference?: () => unknown;
+  /** Rounds to run, where the case knows: one per request, say. */
+  readonly rounds?: number;
   /** Limit for the subject's median, milliseconds. */
   readonly limitMs?: number;
   /** Limit for the slowest run, milliseconds. */
@@ -57,7 +59,7 @@ async function measure(one: BenchCase): Promise<Outcome> {
     if (onceMs * warmUps > budgetMs / 4) break;
   }
   const affordable = Math.floor(budgetMs / Math.max(onceMs, 0.001));
-  const rounds = Math.max(leastRounds, Math.min(mostRounds, affordable));
+  const rounds = one.rounds ?? Math.max(leastRounds, Math.min(mostRounds, affordable));
   const subjectMs: number[] = [];
   const referenceMs: number[] = [];
   for (let i = 0; i < rounds; i++) {

@@ -1,12 +1,12 @@
 import { uniformFloat64 } from 'pure-rand/distribution/uniformFloat64';
 import { xoroshiro128plus } from 'pure-rand/generator/xoroshiro128plus';
+import type { GradeRank } from '../../src/exams/index.js';
 import { atSeconds, convolve, lognormal } from '../../src/planning/distribution.js';
 import {
   compareObjectives,
   judgeChoice,
   type Choice,
   type ChoiceProblem,
-  type GradeRank,
 } from '../../src/planning/solver/problem.js';
 import { sequenceTime } from '../../src/planning/table-time.js';
 

@@ -5,6 +5,9 @@ import { exitCodes, print, printJson, printProblems, progressLine } from '../out
 import { planRequests, whenWords, type PlannedList } from '../plan-requests.js';
 import { planBrief, planText } from '../text/plan-text.js';
 
+/** Wall clock for one choice; then the branch and bound answers, which has it ready. */
+const choosingMs = 150;
+
 interface PlanFlags {
   readonly id?: string[];
   readonly library?: string;
@@ -52,7 +55,7 @@ export async function planFile(file: string, flags: PlanFlags): Promise<number> 
     flags.id === undefined
       ? read.requests
       : read.requests.filter((r) => flags.id?.includes(r.request.id));
-  const solver = linearSolver();
+  const solver = linearSolver({ wallClockMs: choosingMs });
   let list: PlannedList;
   try {
     list = await planRequests(wanted, department, ground, solver, progressLine('planning'));

@@ -1,5 +1,6 @@
 import { chanceWithin, convolve } from '../distribution.js';
-import type { Choice, ChoiceObjective, ChoiceProblem, GradeRank } from './problem.js';
+import type { GradeRank } from '../../exams/index.js';
+import type { Choice, ChoiceObjective, ChoiceProblem } from './problem.js';
 
 /** Rounding allowance on probabilities: sums of masses in another order differ by about 1e-15. */
 export const chanceTolerance = 1e-9;

@@ -1,12 +1,10 @@
+import type { GradeRank } from '../../exams/index.js';
 import type { Distribution } from '../distribution.js';
 
 /**
  * One exam as a choice: at most one candidate sequence per view, so that the questions asked get the
  * best grades that fit the slot, the stay limit and the policy's confidence.
  */
-
-/** 0 none, 1 screening, 2 targeted, 3 diagnostic. */
-export type GradeRank = 0 | 1 | 2 | 3;
 
 /** A sequence that could serve a view. */
 export interface ChoiceCandidate {
