@@ -1,7 +1,7 @@
 import { rankOf, type SitePolicy } from '../exams/index.js';
 import type { ToleranceProfile } from '../tolerance/index.js';
 import type { Cast } from './cast.js';
-import { atSeconds, convolve, lognormal } from './distribution.js';
+import { atSeconds, coarsened, convolve, lognormal } from './distribution.js';
 import type { ChoiceProblem, SharedTime } from './solver/problem.js';
 import { pointsApartS } from './table-time.js';
 import { candidateTime, nominalS, type FixedTime } from './table-parts.js';
@@ -69,7 +69,7 @@ function injectionTime(cast: Cast, policy: SitePolicy): SharedTime[] {
     {
       views: after,
       nominalS: Math.ceil(meanS + waitS),
-      time: convolve(lognormal(meanS, cv, pointsApartS(meanS * cv)), atSeconds(waitS)),
+      time: coarsened(convolve(lognormal(meanS, cv), atSeconds(waitS)), pointsApartS(meanS * cv)),
     },
   ];
 }

@@ -1,6 +1,7 @@
 import { ProblemError } from '../shared/index.js';
 import {
   atSeconds,
+  coarsened,
   convolve,
   lognormal,
   mixture,
@@ -43,14 +44,13 @@ export function sequenceTime(step: TimedStep): Distribution {
     });
   }
   const whole =
-    variation === undefined
-      ? atSeconds(acquisitionS)
-      : lognormal(acquisitionS, variation, pointsApartS(acquisitionS * variation));
+    variation === undefined ? atSeconds(acquisitionS) : lognormal(acquisitionS, variation);
   const run =
     retake === undefined
       ? whole
       : convolve(whole, repeats(retake.intervals, retake.spoilChance, retake.intervalS));
-  const once = convolve(run, atSeconds(idleS));
+  const stepS = pointsApartS(acquisitionS * (variation ?? 0));
+  const once = coarsened(convolve(run, atSeconds(idleS)), stepS);
   if (repeatChance === 0) return once;
   return mixture([
     { weight: 1 - repeatChance, of: once },
@@ -58,7 +58,10 @@ export function sequenceTime(step: TimedStep): Distribution {
   ]);
 }
 
-/** An eighth of the standard deviation: fine enough that the variance grows by a quarter of a percent. */
+/**
+ * Seconds between the points that a time of this standard deviation is kept on: a sixth of it, so the
+ * variance grows by less than one percent.
+ */
 export function pointsApartS(deviationS: number): number {
-  return Math.max(1, Math.floor(deviationS / 8));
+  return Math.max(1, Math.floor(deviationS / 6));
 }

@@ -39,7 +39,8 @@ describe('table time of one sequence', () => {
     const d = sequenceTime({ acquisitionS: 300, idleS: 20, repeatChance: 0, variation: 0.2 });
     expect(meanS(d)).toBeCloseTo(320, 1);
     const median = 300 / Math.sqrt(1 + 0.2 ** 2) + 20;
-    expect(Math.abs(quantileS(d, 0.5) - median)).toBeLessThanOrEqual(1);
+    // Kept on points a sixth of the deviation apart (10 s of 60 s), so a quantile is known to half of that.
+    expect(Math.abs(quantileS(d, 0.5) - median)).toBeLessThanOrEqual(5);
   });
 
   // Source: stochastic order; more to go wrong never ends earlier.
