@@ -93,7 +93,7 @@ function triedVariations(
     on: ScannerAbilities,
     say: (grade: string) => string,
   ) => {
-    const other = prepare(changed, on, ground);
+    const other = prepare(changed, on, ground, prepared.fixed);
     if (other.kind !== 'ok') return;
     const ranks = chooseExactly(other.value.problem).ranks;
     if (ranks.some((rank, index) => rank > (choice.ranks[index] ?? 0))) {

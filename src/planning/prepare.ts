@@ -59,11 +59,16 @@ export function examOf(
   return { kind: 'ok', value: { exam, questions } };
 }
 
-/** Times and grades everything that could be run for a request on a scanner. */
+/**
+ * Times and grades everything that could be run for a request on a scanner.
+ *
+ * @param known the fixed time, where a variation of the same request has it already
+ */
 export function prepare(
   request: ExamRequest,
   scanner: ScannerAbilities,
   ground: PlanningGround,
+  known?: FixedTime,
 ): Result<Prepared> {
   const found = examOf(request, ground.library);
   if (found.kind === 'refused') return found;
@@ -88,7 +93,7 @@ export function prepare(
   }
   const { policy } = ground.library;
   const profile = profileOf(request.tolerance, policy);
-  const fixed = fixedTime(request, exam, policy);
+  const fixed = known ?? fixedTime(request, exam, policy);
   const cast = castFor({
     ...ground,
     exam,

@@ -43,13 +43,15 @@ export function sequenceTime(step: TimedStep): Distribution {
       wayOut: 'Correct the movement chances of the policy or the statement.',
     });
   }
+  const stepS = pointsApartS(acquisitionS * (variation ?? 0));
   const whole =
-    variation === undefined ? atSeconds(acquisitionS) : lognormal(acquisitionS, variation);
+    variation === undefined
+      ? atSeconds(acquisitionS)
+      : coarsened(lognormal(acquisitionS, variation), stepS);
   const run =
     retake === undefined
       ? whole
       : convolve(whole, repeats(retake.intervals, retake.spoilChance, retake.intervalS));
-  const stepS = pointsApartS(acquisitionS * (variation ?? 0));
   const once = coarsened(convolve(run, atSeconds(idleS)), stepS);
   if (repeatChance === 0) return once;
   return mixture([
