@@ -74,7 +74,7 @@ function curveText(plan: Plan): string {
   });
   const chance = ` ${fitted('Chance to finish', 24)}${shown
     .map((p) =>
-      percent(p.chanceToFinish)
+      (p.sequences.length === 0 ? '-' : percent(p.chanceToFinish))
         .replace(' ', '')
         .padStart(columnWidth - 1),
     )
