@@ -10,7 +10,8 @@ export default tseslint.config(
       'max-lines': ['warn', { max: 250, skipBlankLines: true, skipComments: true }],
       '@typescript-eslint/no-explicit-any': 'error',
       '@typescript-eslint/consistent-type-imports': 'error',
+      '@typescript-eslint/no-unused-vars': ['error', { ignoreRestSiblings: true }],
     },
   },
-  { files: ['tests/bench/**'], rules: { 'no-console': 'off' } },
+  { files: ['tests/bench/**', 'src/setup.mjs'], rules: { 'no-console': 'off' } },
 );

@@ -1,2 +1,4 @@
 export * from './scanners.js';
 export * from './conflicts.js';
+export * from './gaps.js';
+export * from './fits.js';

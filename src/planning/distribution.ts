@@ -103,11 +103,8 @@ export function repeats(trials: number, chance: number, unitS: number): Distribu
  * Lognormal time with the given mean and coefficient of variation (standard deviation / mean), on whole
  * seconds. The density is weighed with a hat one second to either side, as `atSeconds` does, so the mean
  * is kept; tails of 1e-6 are cut and the rest is renormalised.
- *
- * @param stepS whole seconds between mass points, 1 unless given: a wide time on few points is added to
- *   others many times faster. The hat widens with it; the variance grows by about stepS squared over 6.
  */
-export function lognormal(meanS: number, coefficientOfVariation: number, stepS = 1): Distribution {
+export function lognormal(meanS: number, coefficientOfVariation: number): Distribution {
   const cv = coefficientOfVariation;
   demand(Number.isFinite(cv) && cv >= 0, 'a coefficient of variation', `${cv}`, '0 or more');
   if (cv === 0 || meanS === 0) return atSeconds(meanS);

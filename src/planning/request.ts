@@ -14,6 +14,17 @@ export type SafetyScreening = (typeof screeningStates)[number];
 export const transports = ['walking', 'wheelchair', 'trolley', 'bed'] as const;
 export type Transport = (typeof transports)[number];
 
+export const dayParts = ['any', 'morning', 'afternoon'] as const;
+/** Part of the day in which the patient can come; the afternoon starts at 12:00. */
+export type DayPart = (typeof dayParts)[number];
+
+/** When the patient can come: ISO dates, both included; absent: no limit. */
+export interface CanCome {
+  readonly from?: string;
+  readonly until?: string;
+  readonly partOfDay: DayPart;
+}
+
 /** One exam asked for: what a plan is made from. No name, number or address of the patient. */
 export interface ExamRequest {
   readonly id: string;
@@ -23,6 +34,7 @@ export interface ExamRequest {
   readonly priority: Priority;
   /** ISO date by which an answer is due. */
   readonly dueDate?: string;
+  readonly canCome: CanCome;
   readonly tolerance: ToleranceStatement;
   readonly contrast: ContrastState;
   readonly safetyScreening: SafetyScreening;

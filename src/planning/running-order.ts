@@ -80,6 +80,6 @@ export function runningOrder(
 
 /** Timed phases that cannot all be met in time are run as early as the rest allows. */
 function withoutLatest(item: OrderItem): OrderItem {
-  const { latestAfterInjectionS: _dropped, ...rest } = item;
+  const { latestAfterInjectionS, ...rest } = item;
   return rest;
 }

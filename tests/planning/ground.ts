@@ -47,6 +47,7 @@ export function requestFor(examId: string, given: Partial<ExamRequest> = {}): Ex
     examId,
     questionIds: [],
     priority: 'routine',
+    canCome: { partOfDay: 'any' },
     tolerance: calm,
     contrast: 'approved',
     safetyScreening: 'done by site',

@@ -20,6 +20,9 @@ export const requestColumns = [
   'scanner',
   'start',
   'slot',
+  'can_come_from',
+  'can_come_until',
+  'can_come_part',
   'b1rms_limit_microtesla',
   'note',
 ] as const;

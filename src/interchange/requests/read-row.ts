@@ -1,6 +1,7 @@
 import { patientClasses, statementSources } from '../../exams/index.js';
 import {
   contrastStates,
+  dayParts,
   priorities,
   screeningStates,
   transports,
@@ -99,9 +100,18 @@ export function readRow(row: RawRow, place: string): Result<BookedRequest> {
       'Only what bears on stillness, breath or bearing the scanner belongs here.',
     );
   }
-  const dueDate = text('due_date');
-  if (dueDate !== '' && !isoDate.safeParse(dueDate).success) {
-    refuse('due_date', 'a date as year-month-day', 'Write for example 2026-12-18.');
+  const dateIn = (column: RequestColumn): string => {
+    const value = text(column);
+    if (value !== '' && !isoDate.safeParse(value).success) {
+      refuse(column, 'a date as year-month-day', 'Write for example 2026-12-18.');
+    }
+    return value;
+  };
+  const dueDate = dateIn('due_date');
+  const from = dateIn('can_come_from');
+  const until = dateIn('can_come_until');
+  if (from !== '' && until !== '' && until < from) {
+    refuse('can_come_until', `not before ${from}`, 'Swap the two dates.');
   }
   const age = readNumber(text('age_years'));
   if (age === 'wrong' || (age !== undefined && (age < 0 || age > 120))) {
@@ -129,6 +139,11 @@ export function readRow(row: RawRow, place: string): Result<BookedRequest> {
     questionIds: [...new Set(list('questions').map((q) => q.toLowerCase()))],
     priority: oneOf('priority', priorities, 'routine'),
     ...(dueDate === '' ? {} : { dueDate }),
+    canCome: {
+      ...(from === '' ? {} : { from }),
+      ...(until === '' ? {} : { until }),
+      partOfDay: oneOf('can_come_part', dayParts, 'any'),
+    },
     tolerance: {
       still,
       hold,
