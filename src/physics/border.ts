@@ -6,7 +6,7 @@
  *
  * @param weightsA signal of the first tissue on every line, proton density included
  * @param weightsB the same of the second; same length
- * @returns Infinity when the two are equally bright
+ * @returns Infinity when the two are equally bright, or blurred so far that a level is not reached
  */
 export function borderWidthMm(
   weightsA: Float64Array,
@@ -51,6 +51,7 @@ function crossing(
   } else {
     while (share(direction * x) < level && x < furthest) x += step;
   }
+  if (Math.abs(x) >= furthest) return Infinity;
   let low = x - step;
   let high = x;
   for (let n = 0; n < 20; n++) {

@@ -1,4 +1,5 @@
 import { ProblemError } from '../shared/index.js';
+import { placesInTrain } from './kspace-order.js';
 
 export type KSpaceOrder = 'linear' | 'centric' | 'single-shot';
 
@@ -27,6 +28,9 @@ export interface KSpacePlan {
    * parallel imaging skips take their neighbour's echo, conjugate-filled ones their mirror's.
    */
   readonly echoOfLine: Int32Array;
+  /** Shot (from 0) in which each line was read, by the same rule. */
+  readonly shotOfLine: Int32Array;
+  /** Lines filled by conjugate symmetry: the first ones, 0 to this number less one. */
   readonly conjugateFilled: number;
   readonly centreEcho: number;
   readonly effectiveEchoTimeMs: number;
@@ -35,7 +39,7 @@ export interface KSpacePlan {
 }
 
 /**
- * Which echo fills which line. Linear: segmented, each echo one band of k-space, shifted so that the
+ * Which echo fills which line. Linear: segmented, each echo one band of k-space, turned so that the
  * wanted effective echo time lands on the centre. Centric: first echo at the centre, outwards on both
  * sides. Single-shot: one train from the overscan side through the centre to the far edge; with partial
  * Fourier the rest is filled by conjugate symmetry (Margosian 1986; Noll 1991). The effective echo time is
@@ -60,20 +64,18 @@ export function planKSpace(request: KSpaceRequest): KSpacePlan {
   const single = request.order === 'single-shot';
   const shots = single ? 1 : Math.ceil(count / request.echoTrainLength);
   const train = single ? count : Math.min(request.echoTrainLength, count);
-  const rankOfCentre = acquired.indexOf(centre);
-  const echoAt = new Map<number, number>();
-  acquired.forEach((line, rank) => {
-    echoAt.set(line, echoFor(rank, rankOfCentre, count, shots, train, request));
-  });
+  const wantedEcho =
+    request.wantedEffectiveEchoTimeMs === undefined
+      ? undefined
+      : Math.round(request.wantedEffectiveEchoTimeMs / request.echoSpacingMs) - 1;
+  const places = placesInTrain(request.order, count, acquired.indexOf(centre), train, wantedEcho);
   const echoOfLine = new Int32Array(lines);
-  let conjugateFilled = 0;
+  const shotOfLine = new Int32Array(lines);
   for (let line = 0; line < lines; line++) {
-    let from = line;
-    if (line < firstLine) {
-      conjugateFilled += 1;
-      from = Math.min(lines - 1, 2 * centre - line);
-    }
-    echoOfLine[line] = echoAt.get(nearest(acquired, from)) ?? 0;
+    const from = line < firstLine ? Math.min(lines - 1, 2 * centre - line) : line;
+    const place = places[rankOfNearest(acquired, from)];
+    echoOfLine[line] = place?.echo ?? -1;
+    shotOfLine[line] = place?.shot ?? -1;
   }
   const centreEcho = echoOfLine[centre] ?? 0;
   return {
@@ -81,7 +83,8 @@ export function planKSpace(request: KSpaceRequest): KSpacePlan {
     acquiredLines: count,
     shots,
     echoOfLine,
-    conjugateFilled,
+    shotOfLine,
+    conjugateFilled: firstLine,
     centreEcho,
     effectiveEchoTimeMs: (centreEcho + 1) * request.echoSpacingMs,
     echoTrainLength: train,
@@ -115,32 +118,8 @@ function isOnPattern(offset: number, factor: number): boolean {
   return Math.round(Math.round(offset / factor) * factor) === offset;
 }
 
-function echoFor(
-  rank: number,
-  rankOfCentre: number,
-  count: number,
-  shots: number,
-  train: number,
-  request: KSpaceRequest,
-): number {
-  if (request.order === 'single-shot') return rank;
-  if (request.order === 'centric') {
-    const distance = Math.abs(rank - rankOfCentre);
-    const place = rank === rankOfCentre ? 0 : 2 * distance - (rank > rankOfCentre ? 1 : 0);
-    return Math.min(train - 1, Math.floor(place / shots));
-  }
-  const wanted =
-    request.wantedEffectiveEchoTimeMs === undefined
-      ? Math.floor(rankOfCentre / shots)
-      : Math.round(request.wantedEffectiveEchoTimeMs / request.echoSpacingMs) - 1;
-  const atCentre = Math.max(0, Math.min(train - 1, wanted));
-  // Bands of `shots` lines, the centre line in the middle of its band, wrapped around the edge of k-space.
-  const shift = atCentre * shots + Math.floor(shots / 2) - rankOfCentre;
-  const place = (((rank + shift) % count) + count) % count;
-  return Math.min(train - 1, Math.floor(place / shots));
-}
-
-function nearest(sorted: readonly number[], line: number): number {
+/** Index of the acquired line nearest to a line; the lower of two equally near. */
+function rankOfNearest(sorted: readonly number[], line: number): number {
   let low = 0;
   let high = sorted.length - 1;
   while (high - low > 1) {
@@ -150,26 +129,42 @@ function nearest(sorted: readonly number[], line: number): number {
   }
   const a = sorted[low] ?? 0;
   const b = sorted[high] ?? a;
-  return Math.abs(line - a) <= Math.abs(b - line) ? a : b;
+  return Math.abs(line - a) <= Math.abs(b - line) ? low : high;
 }
 
 function check(request: KSpaceRequest): void {
-  const refuse = (thing: string, value: number, limit: string) => {
-    throw new ProblemError({
-      code: 'kspace-value',
-      thing,
-      value: String(value),
-      limit,
-      wayOut: 'Correct the sequence.',
-    });
+  const refuse = (thing: string, value: number, limit: string, wayOut: string): never => {
+    throw new ProblemError({ code: 'kspace-value', thing, value: String(value), limit, wayOut });
   };
-  if (!Number.isInteger(request.phaseLines) || request.phaseLines < 4)
-    refuse('phase lines', request.phaseLines, 'a whole number, 4 or more');
-  if (!(request.partialFourier > 0.5 && request.partialFourier <= 1))
-    refuse('Partial Fourier', request.partialFourier, 'above 0.5, at most 1');
-  if (!(request.parallelFactor >= 1))
-    refuse('Parallel Reduction Factor', request.parallelFactor, '1 or more');
-  if (!Number.isInteger(request.echoTrainLength) || request.echoTrainLength < 1)
-    refuse('RF Echo Train Length', request.echoTrainLength, 'a whole number, 1 or more');
-  if (!(request.echoSpacingMs > 0)) refuse('echo spacing', request.echoSpacingMs, 'above 0 ms');
+  const { phaseLines, partialFourier, parallelFactor, referenceLines, echoTrainLength } = request;
+  const wanted = request.wantedEffectiveEchoTimeMs ?? request.echoSpacingMs;
+  if (!Number.isInteger(phaseLines) || phaseLines < 4)
+    refuse('phase lines', phaseLines, 'a whole number, 4 or more', 'Give the whole phase matrix.');
+  if (!(partialFourier > 0.5 && partialFourier <= 1))
+    refuse('Partial Fourier', partialFourier, 'above 0.5, at most 1', 'Use 1 for all lines.');
+  if (!(parallelFactor >= 1 && parallelFactor <= phaseLines / 2))
+    refuse(
+      'Parallel Reduction Factor',
+      parallelFactor,
+      '1 or more, at most half the phase lines',
+      'Use 1 without parallel imaging.',
+    );
+  if (!Number.isInteger(referenceLines) || referenceLines < 0 || referenceLines > phaseLines)
+    refuse(
+      'reference lines',
+      referenceLines,
+      'a whole number from 0 to the phase lines',
+      'Use 0 without parallel imaging.',
+    );
+  if (!Number.isInteger(echoTrainLength) || echoTrainLength < 1)
+    refuse(
+      'RF Echo Train Length',
+      echoTrainLength,
+      'a whole number, 1 or more',
+      'Use 1 for one line per excitation.',
+    );
+  if (!(request.echoSpacingMs > 0 && request.echoSpacingMs < Infinity))
+    refuse('echo spacing', request.echoSpacingMs, 'above 0 ms', 'Give it in ms.');
+  if (!(wanted > 0 && wanted < Infinity))
+    refuse('wanted echo time', wanted, 'above 0 ms', 'Give it in ms, or leave it out.');
 }

@@ -1,23 +1,24 @@
 /**
  * Full width at half maximum of the magnitude of the point-spread function, mm along the phase direction.
  * The spread is the Fourier sum of the line weights, evaluated between the pixels; with equal weights
- * it is the plain sinc width of 1.2067 pixels.
+ * it is the plain sinc width of 1.2067 pixels. The half-maximum points nearest to the centre count.
  *
  * @param weights signal at each phase-encode line, centre at floor(length / 2)
  * @param pixelMm acquired pixel size along the phase direction
+ * @returns the plain pixel where there is no signal, at most the whole field of view
  */
 export function spreadWidthMm(weights: Float64Array, pixelMm: number): number {
+  const step = 0.25;
   const centre = Math.floor(weights.length / 2);
   const at = (xPixels: number): number => magnitudeAt(weights, centre, xPixels);
   const peak = at(0);
   if (!(peak > 0)) return pixelMm;
   const edge = (sign: 1 | -1): number => {
-    let inside = 0;
-    let outside = 0.25;
-    while (at(sign * outside) > peak / 2 && outside < weights.length / 2) {
-      inside = outside;
-      outside *= 1.5;
-    }
+    const furthest = weights.length / 2;
+    let outside = step;
+    while (at(sign * outside) > peak / 2 && outside < furthest) outside += step;
+    if (outside >= furthest) return furthest;
+    let inside = outside - step;
     for (let n = 0; n < 32; n++) {
       const middle = (inside + outside) / 2;
       if (at(sign * middle) > peak / 2) inside = middle;

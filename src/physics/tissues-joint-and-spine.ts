@@ -17,7 +17,7 @@ export const jointAndSpineTissues: readonly TissueRow[] = [
     protonDensity: 0.55,
     adcMm2PerS: 0.9e-3,
     about:
-      'proton density: 58.7 against 107.5 of CSF (synthetic relaxometry of the spine, checks 1d)',
+      'proton density: 58.7 against 107.5 of CSF (synthetic relaxometry of the spine, PMC7410772)',
     at: {
       1.5: { t1Ms: 745, t2Ms: 74, t2StarMs: 50, basis: 'from memory', source: 'Stanisz 2005' },
       3: { t1Ms: 993, t2Ms: 78, t2StarMs: 40, basis: 'from memory', source: 'Stanisz 2005' },
