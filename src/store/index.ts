@@ -1,0 +1,14 @@
+export { openStore, type Store, type StoreSettings } from './store.js';
+export type { StoredBooking, StoredOwed, StoredRequest } from './stored.js';
+export type { Holder, PlacingOutcome, Refused, Stale, Taken } from './outcomes.js';
+export type { AddOutcome, RequestOutcome, RequestPatch } from './requests.js';
+export type { Move, NewBooking } from './bookings.js';
+export type { OwedOutcome } from './owed.js';
+export type { DoneAnswer, DoneExam, DoneOutcome } from './record-done.js';
+export type { Change } from './history.js';
+export type { UndoOutcome } from './undo.js';
+export type { Seed, Seeded } from './seed.js';
+export type { BackupOutcome } from './backup.js';
+export { bookingStatuses, holdsItsPlace, type BookingStatus } from './booking-status.js';
+export { owedStates, requestStatuses, type OwedState, type RequestStatus } from './tables.js';
+export { StoreFault } from './fault.js';

@@ -1,0 +1,120 @@
+import { closeSync, mkdirSync, openSync } from 'node:fs';
+import { dirname, resolve } from 'node:path';
+import {
+  CompiledQuery,
+  Kysely,
+  SqliteDialect,
+  SqliteDriver,
+  type DatabaseConnection,
+  type SqliteDatabase,
+  type SqliteStatement,
+} from 'kysely';
+import LibsqlDatabase from 'libsql';
+import { ProblemError } from '../shared/index.js';
+import type { Database } from './database.js';
+import { retried } from './retried.js';
+import type { Tables } from './tables.js';
+
+/** Short, because SQLite waits with the whole process; `retried` does the long wait. */
+const busyTimeoutMs = 40;
+
+/** Opens one file (made when missing, readable by its owner only), or a database in memory. */
+export async function openSqlite(
+  file: string,
+  committed: Database['committed'],
+): Promise<Database> {
+  const path = file === ':memory:' ? file : resolve(file);
+  const libsql = await retried(() => Promise.resolve().then(() => openFile(path)));
+  const database = guarded(libsql);
+  const kysely = new Kysely<Tables>({ dialect: new ImmediateDialect({ database }) });
+  const nothingMore = () => Promise.resolve();
+  return {
+    kind: 'sqlite',
+    kysely,
+    // `begin immediate` has already taken the only write lock there is.
+    lockForWriting: nothingMore,
+    lockForSchema: nothingMore,
+    copyInto: async (copy) => {
+      await kysely.executeQuery(CompiledQuery.raw('vacuum into ?', [copy]));
+    },
+    committed,
+    close: () => kysely.destroy(),
+  };
+}
+
+function openFile(path: string): LibsqlDatabase.Database {
+  try {
+    if (path !== ':memory:') {
+      mkdirSync(dirname(path), { recursive: true });
+      closeSync(openSync(path, 'a', 0o600));
+    }
+    const libsql = new LibsqlDatabase(path, { timeout: busyTimeoutMs });
+    const [mode] = libsql.pragma('journal_mode = wal') as [{ journal_mode: string }];
+    if (path !== ':memory:' && mode.journal_mode !== 'wal') {
+      throw new Error(`journal mode is ${mode.journal_mode}`);
+    }
+    libsql.pragma('synchronous = full');
+    libsql.pragma('foreign_keys = on');
+    return libsql;
+  } catch (error) {
+    const { code, message } = error as Error & { readonly code?: unknown };
+    if (typeof code === 'string' && code.startsWith('SQLITE_BUSY')) throw error;
+    throw new ProblemError({
+      code: 'store-open',
+      thing: `database file ${path}`,
+      value: message,
+      limit: 'a file of this program on a local disk that may be written',
+      wayOut:
+        'Check path, rights and disk; to go back to a backup, put it in the place of this file.',
+    });
+  }
+}
+
+class ImmediateDialect extends SqliteDialect {
+  readonly #database: SqliteDatabase;
+  constructor(config: { readonly database: SqliteDatabase }) {
+    super(config);
+    this.#database = config.database;
+  }
+  override createDriver() {
+    return new ImmediateDriver({ database: this.#database });
+  }
+}
+
+/** Every transaction of ours writes, so it takes the write lock at once and never fails half-way for it. */
+class ImmediateDriver extends SqliteDriver {
+  override async beginTransaction(connection: DatabaseConnection): Promise<void> {
+    await connection.executeQuery(CompiledQuery.raw('begin immediate'));
+  }
+}
+
+/** libsql 0.5.29 ends the whole process when it is given a boolean to bind; nothing it cannot hold gets there. */
+function guarded(libsql: LibsqlDatabase.Database): SqliteDatabase {
+  return {
+    close: () => void libsql.close(),
+    prepare(sql): SqliteStatement {
+      const statement = libsql.prepare(sql);
+      return {
+        reader: statement.reader,
+        all: (values) => statement.all(bindable(values)),
+        run: (values) => statement.run(bindable(values)),
+        iterate: (values) => statement.iterate(bindable(values)),
+      };
+    },
+  };
+}
+
+function bindable(values: readonly unknown[]): unknown[] {
+  return values.map((value, index) => {
+    const fits =
+      value === null ||
+      typeof value === 'string' ||
+      typeof value === 'bigint' ||
+      (typeof value === 'number' && Number.isFinite(value));
+    if (fits) return value;
+    const met = typeof value === 'number' ? 'a number that is not finite' : typeof value;
+    throw new TypeError(
+      `Parameter ${index + 1} of a statement is ${met}; text, finite numbers and null can be bound.`,
+    );
+  });
+}
