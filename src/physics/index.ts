@@ -10,3 +10,6 @@ export * from './border.js';
 export * from './contrast.js';
 export * from './noise.js';
 export * from './rf.js';
+export * from './phantom.js';
+export * from './phantom-head.js';
+export * from './preview.js';
