@@ -1,0 +1,89 @@
+import type { Request, Response } from 'express';
+import { clock } from '../day/index.js';
+import type { StoredBooking } from '../store/index.js';
+import { isoDate, readGap } from './board-fields.js';
+import type { PageDeps } from './deps.js';
+import { dayBoard } from './view-models/day-board.js';
+import { gapOffers } from './view-models/gap-offers.js';
+
+/** What a page says about the change that led to it. */
+export interface Told {
+  readonly kind: 'told' | 'refused';
+  readonly text: string;
+}
+
+/** The day board as a page, shown by itself or with the answer to a change. */
+export function boardPage(deps: PageDeps) {
+  const { planner } = deps;
+  const examName = (id: string) => deps.ground.library.exams.get(id)?.name ?? id;
+
+  async function data(date: string) {
+    const bookings = await deps.store.bookings.listDay(date);
+    const requests = new Map((await deps.store.requests.list()).map((r) => [r.id, r]));
+    const board = dayBoard({
+      date,
+      department: deps.department,
+      bookings,
+      requests,
+      examName,
+      wishedChance: deps.ground.library.policy.time.finishConfidence.value,
+    });
+    return { board, bookings, requests };
+  }
+
+  async function show(request: Request, response: Response, message?: Told) {
+    const date = String(request.params['date']);
+    if (!isoDate.test(date)) return response.redirect(303, `/day/${deps.department.days[0]}`);
+    const { board, bookings, requests } = await data(date);
+    const opened =
+      typeof request.query['booking'] === 'string'
+        ? bookings.find((b) => b.id === request.query['booking'])
+        : undefined;
+    const gap = readGap(request.query['gap'], deps.department.scanners);
+    const waiting = [...requests.values()].filter((r) => r.status === 'waiting');
+    const offers =
+      gap === undefined ? undefined : await gapOffers({ ...gap, date, waiting, planner, examName });
+    return response.status(message?.kind === 'refused' ? 409 : 200).render('day', {
+      title: `Day board, ${date}`,
+      board,
+      days: deps.department.days,
+      scanners: deps.department.scanners,
+      waitingCount: waiting.length,
+      gap:
+        gap === undefined
+          ? undefined
+          : { ...gap, from: clock(gap.gap.fromMin), to: clock(gap.gap.toMin) },
+      offers,
+      opened:
+        opened === undefined
+          ? undefined
+          : openedBooking(
+              opened,
+              examName(requests.get(opened.requestId)?.body.examId ?? ''),
+              board,
+            ),
+      message: message ?? told(request),
+    });
+  }
+
+  return { data, show };
+}
+
+function told(request: Request): Told | undefined {
+  for (const kind of ['told', 'refused'] as const) {
+    const text = request.query[kind];
+    if (typeof text === 'string' && text !== '') return { kind, text: text.slice(0, 300) };
+  }
+  return undefined;
+}
+
+function openedBooking(booking: StoredBooking, exam: string, board: ReturnType<typeof dayBoard>) {
+  const block = board.columns.flatMap((c) => c.blocks).find((b) => b.bookingId === booking.id);
+  return {
+    ...booking,
+    exam,
+    start: clock(booking.startMin),
+    end: clock(booking.startMin + booking.slotMin),
+    block,
+  };
+}

@@ -1,0 +1,157 @@
+import { Router } from 'express';
+import { DateTime } from 'luxon';
+import { grades, gradeWords, type Grade } from '../../exams/index.js';
+import { ProblemError } from '../../shared/index.js';
+import type { PageDeps } from '../deps.js';
+import { whoIs } from '../who.js';
+
+/** Answers owed: what a done exam left below diagnostic, until it is answered or a clinician signs it off. */
+export function owedRoutes(deps: PageDeps): Router {
+  const router = Router();
+  const { planner } = deps;
+  const examName = (id: string) => deps.ground.library.exams.get(id)?.name ?? id;
+
+  router.get('/owed', async (request, response) => {
+    const items = await deps.store.owed.list();
+    const requests = new Map((await deps.store.requests.list()).map((r) => [r.id, r]));
+    const today = DateTime.fromMillis(deps.now(), { zone: deps.department.zone }).toISODate() ?? '';
+    response.render('owed', {
+      title: 'Answers owed',
+      open: items
+        .filter((i) => i.state === 'owed' || i.state === 'follow-up booked')
+        .map((i) => ({
+          ...i,
+          exam: examName(requests.get(i.requestId)?.body.examId ?? ''),
+          words: gradeWords[i.grade],
+          late: i.dueDate < today,
+        })),
+      closed: items
+        .filter((i) => i.state === 'answered' || i.state === 'signed off')
+        .map((i) => ({ ...i, words: gradeWords[i.grade] })),
+      waiting: [...requests.values()]
+        .filter((r) => r.status === 'waiting' || r.status === 'booked')
+        .map((r) => ({ id: r.id, exam: examName(r.body.examId) })),
+      told: typeof request.query['told'] === 'string' ? request.query['told'].slice(0, 300) : '',
+    });
+  });
+
+  router.post('/owed/:id/follow-up', async (request, response) => {
+    const form = request.body as Record<string, string>;
+    const outcome = await deps.store.owed.bookFollowUp(
+      String(request.params.id),
+      Number(form['version']),
+      form['request'] ?? '',
+      whoIs(request),
+      deps.now(),
+    );
+    settle(outcome);
+    response.redirect(303, '/owed?told=Follow-up+noted.+The+answer+stays+owed+until+it+is+given.');
+  });
+
+  router.post('/owed/:id/sign-off', async (request, response) => {
+    const form = request.body as Record<string, string>;
+    const signedBy = (form['signed_by'] ?? '').trim();
+    const reason = (form['reason'] ?? '').trim();
+    if (signedBy === '' || reason === '') {
+      throw new ProblemError({
+        code: 'sign-off',
+        thing: 'sign-off',
+        value: signedBy === '' ? 'no clinician named' : 'no reason given',
+        limit: 'a clinician signs with name and reason',
+        wayOut: 'Go back and fill in both.',
+      });
+    }
+    const outcome = await deps.store.owed.signOff(
+      String(request.params.id),
+      Number(form['version']),
+      { signedBy, reason },
+      whoIs(request),
+      deps.now(),
+    );
+    settle(outcome);
+    response.redirect(303, '/owed?told=Signed+off.');
+  });
+
+  /** The exam is done: what each question got. Planned grades are offered; lower or higher ones can be said. */
+  router.get('/bookings/:id/done', async (request, response, next) => {
+    const booking = await deps.store.bookings.get(String(request.params.id));
+    const stored =
+      booking === undefined ? undefined : await deps.store.requests.get(booking.requestId);
+    if (booking === undefined || stored === undefined) return next();
+    const scanner = deps.department.scanners.find((s) => s.id === booking.scannerId);
+    const outcome =
+      scanner === undefined
+        ? undefined
+        : await planner.plan(stored.body, scanner, booking.slotMin * 60);
+    response.render('done', {
+      title: `${stored.id} is done`,
+      booking,
+      stored,
+      exam: examName(stored.body.examId),
+      grades: grades.map((g) => ({ grade: g, words: gradeWords[g] })),
+      answers: outcome?.kind === 'planned' ? outcome.plan.answers : [],
+    });
+  });
+
+  router.post('/bookings/:id/done', async (request, response, next) => {
+    const booking = await deps.store.bookings.get(String(request.params.id));
+    const stored =
+      booking === undefined ? undefined : await deps.store.requests.get(booking.requestId);
+    const exam =
+      stored === undefined ? undefined : deps.ground.library.exams.get(stored.body.examId);
+    if (booking === undefined || stored === undefined || exam === undefined) return next();
+    const form = request.body as Record<string, string>;
+    const asked = exam.questions.filter(
+      (q) => stored.body.questionIds.length === 0 || stored.body.questionIds.includes(q.id),
+    );
+    const days = deps.ground.library.policy.owed.dueDays[stored.body.priority].value;
+    const dueDate =
+      DateTime.fromISO(booking.date, { zone: 'utc' }).plus({ days }).toISODate() ?? booking.date;
+    const outcome = await deps.store.owed.recordDone(
+      {
+        bookingId: booking.id,
+        version: Number(form['version'] ?? booking.version),
+        dueDate,
+        answers: asked.map((q) => ({
+          questionId: q.id,
+          name: q.name,
+          grade: readGrade(form[`grade_${q.id}`], q.name),
+        })),
+      },
+      whoIs(request),
+      deps.now(),
+    );
+    settle(outcome);
+    response.redirect(
+      303,
+      `/owed?told=${encodeURIComponent(`${stored.id} is done; what it left open stands below.`)}`,
+    );
+  });
+
+  return router;
+}
+
+function readGrade(text: string | undefined, question: string): Grade {
+  const grade = grades.find((g) => g === text);
+  if (grade === undefined) {
+    throw new ProblemError({
+      code: 'grade',
+      thing: `grade of "${question}"`,
+      value: `"${text ?? ''}"`,
+      limit: `one of: ${grades.join(', ')}`,
+      wayOut: 'Go back and choose one.',
+    });
+  }
+  return grade;
+}
+
+function settle(outcome: { readonly kind: string; readonly why?: string }): void {
+  if (outcome.kind === 'changed' || outcome.kind === 'done') return;
+  throw new ProblemError({
+    code: 'owed-refused',
+    thing: 'this change',
+    value: outcome.why ?? outcome.kind,
+    limit: 'only the newest version can be changed, and only as the rules of the list allow',
+    wayOut: 'Open the list again and repeat the change if it still fits.',
+  });
+}
