@@ -13,7 +13,10 @@ export interface BlochTrain {
 }
 
 /** Echo amplitudes for a start at `startMz`, and the mean longitudinal magnetisation after the last echo. */
-export function blochTrain(train: BlochTrain, startMz: number): { echoes: number[]; endMz: number } {
+export function blochTrain(
+  train: BlochTrain,
+  startMz: number,
+): { echoes: number[]; endMz: number } {
   const count = 4 * train.refocusingDeg.length + 8;
   const x = new Float64Array(count);
   const y = new Float64Array(count);
@@ -58,21 +61,29 @@ export function blochTrain(train: BlochTrain, startMz: number): { echoes: number
   return { echoes, endMz: z.reduce((sum, v) => sum + v, 0) / count };
 }
 
-/** Echoes in the steady state over repeats, transverse magnetisation spoiled between them. */
+/**
+ * Echoes in the steady state over repeats, and the longitudinal magnetisation before excitation. Transverse
+ * magnetisation is spoiled between trains and after the inversion. Repeats simply follow each other, 400 of them, so a
+ * repeat of a tenth of T1 or more has long settled.
+ */
 export function blochSteadyState(
   train: BlochTrain,
-  repeat: { readonly repetitionTimeMs: number; readonly inversionTimeMs?: number },
-): number[] {
+  repeat: {
+    readonly repetitionTimeMs: number;
+    readonly inversion?: { readonly inversionTimeMs: number; readonly flipDeg: number };
+  },
+): { echoes: number[]; startMz: number } {
   const trainMs = train.refocusingDeg.length * train.echoSpacingMs;
-  const inversionMs = repeat.inversionTimeMs ?? 0;
-  let mz = 1;
+  const inversionMs = repeat.inversion?.inversionTimeMs ?? 0;
+  const recover = (m: number, ms: number) => 1 - (1 - m) * Math.exp(-ms / train.t1Ms);
+  let startMz = 1;
   for (let n = 0; n < 400; n++) {
-    const { endMz } = blochTrain(train, mz);
-    const recover = (m: number, ms: number) => 1 - (1 - m) * Math.exp(-ms / train.t1Ms);
-    mz = recover(endMz, repeat.repetitionTimeMs - trainMs - inversionMs);
-    if (repeat.inversionTimeMs !== undefined) {
-      mz = recover(mz * Math.cos(Math.PI * train.b1Scale), inversionMs);
+    const { endMz } = blochTrain(train, startMz);
+    startMz = recover(endMz, repeat.repetitionTimeMs - trainMs - inversionMs);
+    if (repeat.inversion !== undefined) {
+      const angle = (repeat.inversion.flipDeg * train.b1Scale * Math.PI) / 180;
+      startMz = recover(startMz * Math.cos(angle), inversionMs);
     }
   }
-  return blochTrain(train, mz).echoes;
+  return { echoes: blochTrain(train, startMz).echoes, startMz };
 }

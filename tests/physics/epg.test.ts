@@ -1,8 +1,9 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { echoAmplitudes, steadyStateEchoes } from '../../src/physics/index.js';
+import { echoAmplitudes } from '../../src/physics/index.js';
 import { ProblemError } from '../../src/shared/index.js';
-import { blochSteadyState, blochTrain } from '../oracles/bloch.js';
+import { blochTrain } from '../oracles/bloch.js';
+import { randomTrain } from '../oracles/bloch-trains.js';
 
 const never = 1e15;
 const constant = (deg: number, count: number) => Array.from({ length: count }, () => deg);
@@ -95,6 +96,8 @@ describe('echo amplitudes without relaxation', () => {
         0.25755, 0.25146,
       ],
     ],
+    // Of the eight values printed for 170 the last is named as the eighth echo.
+    [170, [0.9924, 0.99994, 0.99252, 0.99977, 0.99274, 0.9995, 0.99306, 0.99914]],
   ])('the published-checks table holds at %d degrees', (deg, row) => {
     const echoes = lossless(constant(deg, 12));
     row.forEach((value, n) => expect(Math.abs((echoes[n] ?? 0) - value)).toBeLessThan(6e-6));
@@ -109,10 +112,42 @@ describe('echo amplitudes without relaxation', () => {
     row.forEach((value, n) => expect(Math.abs((echoes[n] ?? 0) - value)).toBeLessThan(6e-6));
   });
 
-  it('settles at sin(a/2)', () => {
-    // Derived: mean of echoes 101-200 at 120 degrees is .866027 against .866025 (checks, section 2).
+  it.each([
+    [150, 0.96593],
+    [120, 0.86603],
+    [90, 0.70711],
+    [60, 0.5],
+    [30, 0.25882],
+  ])('settles at sin(a/2): %d degrees at %d', (deg, level) => {
+    // Derived, checks section 2. Echoes swing about it ever less: a long mean, within 1e-4.
+    const tail = lossless(constant(deg, 800)).slice(400);
+    expect(Math.abs(tail.reduce((a, b) => a + b, 0) / 400 - level)).toBeLessThan(1e-4);
+  });
+
+  it('the mean of echoes 101 to 200 at 120 degrees is .866027', () => {
     const tail = lossless(constant(120, 200)).slice(100);
-    expect(tail.reduce((a, b) => a + b, 0) / 100).toBeCloseTo(0.866027, 5);
+    expect(tail.reduce((a, b) => a + b, 0) / 100).toBeCloseTo(0.866027, 6);
+  });
+
+  it.each([
+    [150, 0.98274],
+    [120, 0.9294],
+    [90, 0.83463],
+    [60, 0.68644],
+    [30, 0.45609],
+  ])('a slow ramp from 180 to %d degrees keeps the most there is, %d', (deg, most) => {
+    // Pseudo steady state (Alsop 1997): (2/pi) sin(a/2) K(cos^2(a/2)), derived, checks section 2. The ramp
+    // is slow, so that it is followed all the way; smooth at its start and its end.
+    const ramp = Array.from({ length: 600 }, (_, n) => {
+      const done = (1 - Math.cos((Math.PI * n) / 600)) / 2;
+      return 180 - (180 - deg) * done;
+    });
+    const last = lossless([...ramp, ...constant(deg, 20)]).slice(-20);
+    expect(Math.abs(last.reduce((a, b) => a + b, 0) / 20 - most)).toBeLessThan(1e-4);
+    // The formula itself, by the arithmetic-geometric mean.
+    let [x, y] = [1, Math.sin((deg * Math.PI) / 360)];
+    for (let n = 0; n < 8; n++) [x, y] = [(x + y) / 2, Math.sqrt(x * y)];
+    expect(Math.sin((deg * Math.PI) / 360) / x).toBeCloseTo(most, 4);
   });
 
   it('equals an integral over isochromats for any echo number', () => {
@@ -215,74 +250,29 @@ describe('echo amplitudes with relaxation', () => {
   });
 });
 
-const randomTrain = fc.record({
-  t1Ms: fc.double({ min: 200, max: 4500, noNaN: true }),
-  t2Ms: fc.double({ min: 15, max: 2000, noNaN: true }),
-  echoSpacingMs: fc.double({ min: 2, max: 20, noNaN: true }),
-  refocusingDeg: fc.array(fc.double({ min: 0, max: 200, noNaN: true }), {
-    minLength: 1,
-    maxLength: 24,
-  }),
-  excitationDeg: fc.double({ min: 10, max: 120, noNaN: true }),
-  b1Scale: fc.double({ min: 0.6, max: 1.3, noNaN: true }),
-});
-
 describe('any train agrees with brute-force Bloch isochromats', () => {
   it('echo amplitudes, any angles and B1 scale', () => {
     fc.assert(
       fc.property(randomTrain, (train) => {
+        // Isochromats carry what regrows too: it never reaches an echo, in either model.
         const reference = blochTrain(train, 1).echoes;
-        // The excited part alone: what regrows never reaches an echo, in either model.
-        echoAmplitudes(train).forEach((e, n) => expect(e).toBeCloseTo(reference[n] ?? NaN, 8));
+        echoAmplitudes(train).forEach((e, n) => expect(e).toBeCloseTo(reference[n] ?? NaN, 10));
       }),
-      { numRuns: 200, seed: 3 },
+      { numRuns: 400, seed: 3 },
     );
   });
 
-  it('steady state over repeats, with and without inversion', () => {
-    fc.assert(
-      fc.property(
-        randomTrain,
-        fc.double({ min: 1.05, max: 8, noNaN: true }),
-        fc.option(fc.double({ min: 50, max: 2500, noNaN: true }), { nil: undefined }),
-        (train, factor, inversionTimeMs) => {
-          const needMs = train.refocusingDeg.length * train.echoSpacingMs + (inversionTimeMs ?? 0);
-          const repetitionTimeMs = needMs * factor;
-          const reference = blochSteadyState(train, {
-            repetitionTimeMs,
-            ...(inversionTimeMs === undefined ? {} : { inversionTimeMs }),
-          });
-          const { echoes } = steadyStateEchoes(train, {
-            repetitionTimeMs,
-            ...(inversionTimeMs === undefined ? {} : { inversion: { inversionTimeMs } }),
-          });
-          echoes.forEach((e, n) => expect(Math.abs(e - (reference[n] ?? NaN))).toBeLessThan(3e-6));
-        },
-      ),
-      { numRuns: 60, seed: 4 },
-    );
-  });
-});
-
-describe('steady state', () => {
-  it('of one perfect echo is the exact spin-echo formula', () => {
-    // PD (1 - 2 exp(-(TR - TE/2)/T1) + exp(-TR/T1)) exp(-TE/T2), checks section 7; recovery after the echo is
-    // counted from the echo, so TE/2 past the 180.
-    const { echoes } = steadyStateEchoes(
-      { t1Ms: 833, t2Ms: 83, echoSpacingMs: 15, refocusingDeg: [180] },
-      { repetitionTimeMs: 500 },
-    );
-    expect((echoes[0] ?? 0) * 0.86).toBeCloseTo(0.3168, 4);
-  });
-
-  it('refuses a train that does not fit, naming both times', () => {
-    const run = () =>
-      steadyStateEchoes(
-        { t1Ms: 800, t2Ms: 80, echoSpacingMs: 10, refocusingDeg: constant(180, 50) },
-        { repetitionTimeMs: 400 },
-      );
-    expect(run).toThrow(ProblemError);
-    expect(run).toThrow(/400 ms; the train takes 500 ms/);
+  it('a train of 256 echoes, where dropping states would tell', () => {
+    const train = {
+      t1Ms: 4300,
+      t2Ms: 1900,
+      echoSpacingMs: 4,
+      refocusingDeg: Array.from({ length: 256 }, (_, n) => 60 + 50 * Math.sin(n * n)),
+      excitationDeg: 80,
+      b1Scale: 1.1,
+    };
+    const reference = blochTrain(train, 1).echoes;
+    echoAmplitudes(train).forEach((e, n) => expect(e).toBeCloseTo(reference[n] ?? NaN, 10));
   });
 });
 
@@ -291,10 +281,13 @@ describe('what cannot be a train', () => {
     [{ t1Ms: NaN }, 'T1'],
     [{ t2Ms: -1 }, 'T2'],
     [{ echoSpacingMs: 0 }, 'echo spacing'],
-    [{ refocusingDeg: [720] }, 'flip angle'],
+    [{ refocusingDeg: [180, 720] }, 'refocusing flip angle 2'],
+    [{ refocusingDeg: [] }, 'refocusing angles: none'],
+    [{ excitationDeg: -5 }, 'excitation flip angle'],
     [{ b1Scale: Infinity }, 'B1 scale'],
   ])('%j is refused by name', (wrong, name) => {
     const train = { t1Ms: 800, t2Ms: 80, echoSpacingMs: 10, refocusingDeg: [180], ...wrong };
+    expect(() => echoAmplitudes(train)).toThrow(ProblemError);
     expect(() => echoAmplitudes(train)).toThrow(name);
   });
 });

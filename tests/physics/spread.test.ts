@@ -1,11 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import {
-  borderWidthMm,
   echoAmplitudes,
   lineWeights,
   planKSpace,
   spreadWidthMm,
-  targetContrast,
   tissueAt,
 } from '../../src/physics/index.js';
 
@@ -115,94 +113,5 @@ describe('trains of real tissues', () => {
     expect(sweep(160, 79.6)).toBeCloseTo(1.41, 2);
     expect(sweep(80, 79.6)).toBeCloseTo(1.25, 2);
     expect(sweep(135, 34)).toBeCloseTo(2.2, 1);
-  });
-});
-
-describe('border between two tissues', () => {
-  const flat = (value: number) => new Float64Array(256).fill(value);
-
-  it('without decay is the 10-90 % rise of a sinc step', () => {
-    // Sine integral: 1/2 + Si(pi x)/pi = 0.9 at x = 0.2230 + ...; solved here by its own series, source: definition of Si.
-    const si = (x: number) => {
-      let sum = 0;
-      let term = x;
-      for (let n = 0; n < 60; n++) {
-        sum += term / (2 * n + 1);
-        term *= (-x * x) / ((2 * n + 2) * (2 * n + 3));
-      }
-      return sum;
-    };
-    let low = 0;
-    let high = 1;
-    for (let n = 0; n < 60; n++) {
-      const middle = (low + high) / 2;
-      if (0.5 + si(Math.PI * middle) / Math.PI < 0.9) low = middle;
-      else high = middle;
-    }
-    expect(borderWidthMm(flat(1), flat(0), 1)).toBeCloseTo(2 * low, 2);
-  });
-
-  it('does not depend on which side is which, nor on a common scale', () => {
-    const a = Float64Array.from({ length: 256 }, (_, i) => Math.exp(-Math.abs(i - 128) / 200));
-    const b = Float64Array.from({ length: 256 }, (_, i) => 0.4 * Math.exp(-Math.abs(i - 128) / 30));
-    expect(borderWidthMm(a, b, 0.9)).toBeCloseTo(borderWidthMm(b, a, 0.9), 6);
-    expect(borderWidthMm(a, b, 0.9)).toBeCloseTo(
-      borderWidthMm(
-        a.map((v) => v * 7),
-        b.map((v) => v * 7),
-        0.9,
-      ),
-      6,
-    );
-  });
-
-  it('is wider when the bright side is the one that decays', () => {
-    const steady = flat(1);
-    const decaying = Float64Array.from({ length: 256 }, (_, i) =>
-      Math.exp(-Math.abs(i - 128) / 12),
-    );
-    expect(borderWidthMm(decaying, flat(0), 1)).toBeGreaterThan(
-      2 * borderWidthMm(steady, flat(0), 1),
-    );
-  });
-
-  it('is nowhere between two equally bright tissues', () => {
-    expect(borderWidthMm(flat(0.5), flat(0.5), 1)).toBe(Infinity);
-  });
-});
-
-describe('contrast of a round target', () => {
-  const target = Float64Array.from(
-    { length: 256 },
-    (_, i) => 0.6 * Math.exp(-Math.abs(i - 128) / 60),
-  );
-  const background = Float64Array.from(
-    { length: 256 },
-    (_, i) => 0.25 * Math.exp(-Math.abs(i - 128) / 30),
-  );
-  const at = (diameterMm: number, sliceThicknessMm = 5) =>
-    targetContrast(target, background, {
-      diameterMm,
-      pixelPhaseMm: 0.9,
-      pixelFrequencyMm: 0.9,
-      sliceThicknessMm,
-    });
-
-  it('large: the plain difference at the centre of k-space', () => {
-    expect(at(200)).toBeCloseTo(0.35, 2);
-  });
-  it('vanishing: none', () => {
-    expect(Math.abs(at(0.05))).toBeLessThan(1e-3);
-  });
-  it('grows with size from 1 to 15 mm, and falls with slice thickness', () => {
-    const sizes = [1, 2, 3, 4, 6, 8, 10, 15].map((d) => at(d));
-    for (let n = 1; n < sizes.length; n++) expect(sizes[n] ?? 0).toBeGreaterThan(sizes[n - 1] ?? 0);
-    expect(at(4, 3)).toBeGreaterThan(at(4, 6));
-  });
-  it('changes sign with the tissues', () => {
-    const g = { diameterMm: 4, pixelPhaseMm: 0.9, pixelFrequencyMm: 0.9, sliceThicknessMm: 5 };
-    const dark = targetContrast(background, target, g);
-    expect(dark).toBeLessThan(0);
-    expect(dark).toBeCloseTo(-targetContrast(target, background, g), 9);
   });
 });
