@@ -1,4 +1,5 @@
 import type { Kysely, Transaction } from 'kysely';
+import type { Listeners } from './listeners.js';
 import type { Tables } from './tables.js';
 
 export type DatabaseKind = 'sqlite' | 'postgres';
@@ -13,6 +14,6 @@ export interface Database {
   readonly lockForSchema: (transaction: Transaction<Tables>) => Promise<void>;
   /** A whole copy in one new file. */
   readonly copyInto?: (path: string) => Promise<void>;
-  readonly committed: (seq: number) => void;
+  readonly listeners: Listeners;
   readonly close: () => Promise<void>;
 }

@@ -64,7 +64,7 @@ export async function inTransaction<T>(
         return { outcome, lastSeq };
       }),
   );
-  if (lastSeq !== undefined) database.committed(lastSeq);
+  if (lastSeq !== undefined) database.listeners.tell(lastSeq);
   return outcome;
 }
 

@@ -1,6 +1,7 @@
 import { Kysely, PostgresDialect, sql } from 'kysely';
 import pg from 'pg';
 import type { Database } from './database.js';
+import { listenersToCommits } from './listeners.js';
 import type { Tables } from './tables.js';
 
 const int8 = 20;
@@ -8,7 +9,7 @@ const int8 = 20;
 const schemaLock = 7_741_153;
 
 /** Opens a pool of connections. Nothing is sent before the first query. */
-export function openPostgres(url: string, committed: Database['committed']): Database {
+export function openPostgres(url: string): Database {
   const pool = new pg.Pool({
     connectionString: url,
     max: 8,
@@ -39,7 +40,7 @@ export function openPostgres(url: string, committed: Database['committed']): Dat
     lockForSchema: async (transaction) => {
       await sql`select pg_advisory_xact_lock(${schemaLock})`.execute(transaction);
     },
-    committed,
+    listeners: listenersToCommits(),
     close: () => kysely.destroy(),
   };
 }

@@ -15,7 +15,9 @@ export interface RequestPatch {
   readonly status?: 'waiting' | 'cancelled';
 }
 
-export type AddOutcome = { readonly kind: 'added' | 'exists'; readonly request: StoredRequest };
+export type AddOutcome =
+  | { readonly kind: 'added'; readonly request: StoredRequest }
+  | { readonly kind: 'exists'; readonly request: StoredRequest };
 export type RequestOutcome =
   { readonly kind: 'changed'; readonly request: StoredRequest } | Stale | Refused;
 

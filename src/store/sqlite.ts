@@ -12,6 +12,7 @@ import {
 import LibsqlDatabase from 'libsql';
 import { ProblemError } from '../shared/index.js';
 import type { Database } from './database.js';
+import { listenersToCommits } from './listeners.js';
 import { retried } from './retried.js';
 import type { Tables } from './tables.js';
 
@@ -19,10 +20,7 @@ import type { Tables } from './tables.js';
 const busyTimeoutMs = 40;
 
 /** Opens one file (made when missing, readable by its owner only), or a database in memory. */
-export async function openSqlite(
-  file: string,
-  committed: Database['committed'],
-): Promise<Database> {
+export async function openSqlite(file: string): Promise<Database> {
   const path = file === ':memory:' ? file : resolve(file);
   const libsql = await retried(() => Promise.resolve().then(() => openFile(path)));
   const database = guarded(libsql);
@@ -37,18 +35,19 @@ export async function openSqlite(
     copyInto: async (copy) => {
       await kysely.executeQuery(CompiledQuery.raw('vacuum into ?', [copy]));
     },
-    committed,
+    listeners: listenersToCommits(),
     close: () => kysely.destroy(),
   };
 }
 
 function openFile(path: string): LibsqlDatabase.Database {
+  let libsql: LibsqlDatabase.Database | undefined;
   try {
     if (path !== ':memory:') {
       mkdirSync(dirname(path), { recursive: true });
       closeSync(openSync(path, 'a', 0o600));
     }
-    const libsql = new LibsqlDatabase(path, { timeout: busyTimeoutMs });
+    libsql = new LibsqlDatabase(path, { timeout: busyTimeoutMs });
     const [mode] = libsql.pragma('journal_mode = wal') as [{ journal_mode: string }];
     if (path !== ':memory:' && mode.journal_mode !== 'wal') {
       throw new Error(`journal mode is ${mode.journal_mode}`);
@@ -57,6 +56,7 @@ function openFile(path: string): LibsqlDatabase.Database {
     libsql.pragma('foreign_keys = on');
     return libsql;
   } catch (error) {
+    libsql?.close();
     const { code, message } = error as Error & { readonly code?: unknown };
     if (typeof code === 'string' && code.startsWith('SQLITE_BUSY')) throw error;
     throw new ProblemError({

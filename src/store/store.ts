@@ -1,3 +1,4 @@
+import { ProblemError } from '../shared/index.js';
 import { backUp, type BackupOutcome } from './backup.js';
 import { bookingsIn, type Bookings } from './bookings.js';
 import type { Database } from './database.js';
@@ -33,22 +34,23 @@ export interface Store {
 }
 
 /** Opens a store and brings its tables up to date; `:memory:` is a SQLite store that is never saved. */
-export async function openStore(settings: StoreSettings): Promise<Store> {
-  const listeners = new Set<(seq: number) => void>();
-  const committed = (seq: number) => {
-    // Apart from the write, so that a listener's fault is not taken for a failed write.
-    for (const listener of listeners) queueMicrotask(() => listener(seq));
-  };
-  const database: Database =
-    settings.kind === 'sqlite'
-      ? await openSqlite(settings.file, committed)
-      : openPostgres(settings.url, committed);
+export const openStore = async (settings: StoreSettings): Promise<Store> =>
+  storeOn(await openDatabase(settings));
+
+/** The database alone, its tables up to date. */
+export async function openDatabase(settings: StoreSettings): Promise<Database> {
+  const database =
+    settings.kind === 'sqlite' ? await openSqlite(settings.file) : openPostgres(settings.url);
   try {
     await migrate(database);
   } catch (error) {
     await database.close();
-    throw error;
+    throw error instanceof ProblemError || settings.kind === 'sqlite' ? error : unreachable(error);
   }
+  return database;
+}
+
+export function storeOn(database: Database): Store {
   return {
     requests: requestsIn(database),
     bookings: bookingsIn(database),
@@ -56,10 +58,19 @@ export async function openStore(settings: StoreSettings): Promise<Store> {
     history: historyIn(database),
     seed: (seed, who, atMs) => seedInto(database, seed, who, atMs),
     backup: (path) => backUp(database, path),
-    onChange: (listener) => {
-      listeners.add(listener);
-      return () => void listeners.delete(listener);
-    },
-    close: () => database.close(),
+    onChange: database.listeners.listen,
+    close: database.close,
   };
+}
+
+/** Says what went wrong without the connection string, which holds a password. */
+function unreachable(error: unknown): ProblemError {
+  const { code, name } = error as Error & { readonly code?: unknown };
+  return new ProblemError({
+    code: 'store-open',
+    thing: 'database server',
+    value: typeof code === 'string' ? code : name,
+    limit: 'it must accept the connection string, and tables may be made in its schema',
+    wayOut: 'Check host, port, database, user and rights; the connection string itself is not shown.',
+  });
 }
