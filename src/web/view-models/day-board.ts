@@ -150,7 +150,7 @@ function bookingBlock(
 const boardWords: Readonly<Record<Exclude<Grade, 'diagnostic'>, string>> = {
   targeted: 'lowest: this question only',
   screening: 'lowest: screening, not diagnostic',
-  none: 'lowest: a question not answered',
+  none: 'lowest: one not answered',
 };
 
 const percentOf = (minutes: number, scale: BoardScale) =>

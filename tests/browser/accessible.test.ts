@@ -1,0 +1,81 @@
+import { readFileSync } from 'node:fs';
+import { createRequire } from 'node:module';
+import type { Browser } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { browserPath, openBrowser, openPage, openSite, type Site } from './harness.js';
+
+const axeSource = readFileSync(
+  createRequire(import.meta.url).resolve('axe-core/axe.min.js'),
+  'utf8',
+);
+
+interface Violation {
+  readonly id: string;
+  readonly impact: string | null;
+  readonly nodes: readonly {
+    readonly target: readonly string[];
+    readonly failureSummary: string;
+  }[];
+}
+
+const pages = [
+  '/day/2026-12-08',
+  '/day/2026-12-08?gap=mr2_965_1080',
+  '/requests?status=all',
+  '/requests/new',
+  '/requests/new?exam=liver',
+  '/requests/R-106',
+  '/requests/R-106/edit',
+  '/owed',
+  '/no-such-page',
+];
+
+// Rules: axe-core 4.14.1, WCAG 2.0 to 2.2, levels A and AA. Serious and critical findings fail.
+describe.skipIf(browserPath === undefined)('every page, light and dark', () => {
+  let site: Site;
+  let browser: Browser;
+  beforeAll(async () => {
+    [site, browser] = await Promise.all([openSite(), openBrowser()]);
+  });
+  afterAll(async () => {
+    await browser?.close();
+    await site?.close();
+  });
+
+  for (const path of pages) {
+    it.each(['light', 'dark'] as const)(`${path}, %s`, async (colorScheme) => {
+      const page = await openPage(browser, { colorScheme, bypassCSP: true });
+      await page.goto(site.url + path);
+      await page.evaluate(axeSource);
+      const violations = await page.evaluate(async () => {
+        const axe = (
+          window as unknown as {
+            axe: { run: (d: Document, o: object) => Promise<{ violations: Violation[] }> };
+          }
+        ).axe;
+        return (
+          await axe.run(document, {
+            runOnly: ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'],
+          })
+        ).violations;
+      });
+      const grave = violations
+        .filter((v) => v.impact === 'serious' || v.impact === 'critical')
+        .map((v) => `${v.id}: ${v.nodes[0]?.target.join(' ')} ${v.nodes[0]?.failureSummary}`);
+      expect(grave).toEqual([]);
+      await page.context().close();
+    });
+  }
+
+  it('nothing is cut off sideways at phone width', async () => {
+    const page = await openPage(browser, { viewport: { width: 390, height: 800 } });
+    for (const path of pages) {
+      await page.goto(site.url + path);
+      const wider = await page.evaluate(
+        () => document.documentElement.scrollWidth - window.innerWidth,
+      );
+      expect(wider, path).toBeLessThanOrEqual(1);
+    }
+    await page.context().close();
+  });
+});
