@@ -27,7 +27,7 @@ describe.skipIf(browserPath === undefined)('the booking desk', () => {
       .getByRole('group', { name: /lie flat and still/ })
       .getByLabel('10 min')
       .check();
-    await page.locator('#plan-here').getByText('Acute infarct').waitFor();
+    await page.locator('#plan-here strong', { hasText: 'Acute infarct' }).waitFor();
     await page.getByRole('group', { name: 'Slot' }).getByLabel('20 min').check();
     await page.getByRole('button', { name: 'Save the request' }).click();
     await page.waitForURL('**/requests/R-900');
