@@ -19,7 +19,7 @@ export interface PlaceInTrain {
  * @param count acquired lines
  * @param rankOfCentre index of the centre line among them
  * @param train echoes per shot, at most `count`
- * @param wantedEcho echo wanted on the centre line (linear alone); absent: no turn beyond half a band
+ * @param wantedEcho echo wanted on the centre line (linear alone); absent: one plain sweep, not turned
  */
 export function placesInTrain(
   order: KSpaceOrder,
@@ -30,9 +30,12 @@ export function placesInTrain(
 ): PlaceInTrain[] {
   const echoAt = (place: number) => Math.floor((place * train) / count);
   const firstOf = (echo: number) => Math.ceil((echo * count) / train);
-  const atCentre = Math.max(0, Math.min(train - 1, wantedEcho ?? echoAt(rankOfCentre)));
-  const middle = (firstOf(atCentre) + firstOf(atCentre + 1)) >> 1;
-  const turn = middle - rankOfCentre + count;
+  let turn = 0;
+  if (wantedEcho !== undefined) {
+    const atCentre = Math.max(0, Math.min(train - 1, wantedEcho));
+    const middle = (firstOf(atCentre) + firstOf(atCentre + 1)) >> 1;
+    turn = middle - rankOfCentre + count;
+  }
   const placeOf = (rank: number): number => {
     if (order === 'single-shot') return rank;
     if (order === 'linear') return (rank + turn) % count;

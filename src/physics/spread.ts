@@ -2,6 +2,8 @@
  * Full width at half maximum of the magnitude of the point-spread function, mm along the phase direction.
  * The spread is the Fourier sum of the line weights, evaluated between the pixels; with equal weights
  * it is the plain sinc width of 1.2067 pixels. The half-maximum points nearest to the centre count.
+ * A train that reads the centre late has its outer lines brighter: its main lobe may be narrower than the
+ * sinc, at the price of side lobes, which only the border and the contrast of a target tell.
  *
  * @param weights signal at each phase-encode line, centre at floor(length / 2)
  * @param pixelMm acquired pixel size along the phase direction

@@ -18,6 +18,33 @@ describe('contrast of a round target', () => {
       sliceThicknessMm,
     });
 
+  it.each([2, 4, 7])('of %d mm is what summing a ball of small cubes gives', (diameterMm) => {
+    // Brute force: every cube of the ball inside the pixel's column and the slice adds the difference of the spreads.
+    const step = 0.05;
+    const [pixelPhaseMm, pixelFrequencyMm, sliceThicknessMm] = [0.9, 0.7, 4];
+    const reach = Math.ceil(diameterMm / 2 / step);
+    let sum = 0;
+    for (let j = -reach; j < reach; j++) {
+      const y = (j + 0.5) * step;
+      let cubes = 0;
+      for (let i = 0; i < pixelFrequencyMm / step; i++) {
+        const x = (i + 0.5) * step - pixelFrequencyMm / 2;
+        for (let k = 0; k < sliceThicknessMm / step; k++) {
+          const z = (k + 0.5) * step - sliceThicknessMm / 2;
+          if (x * x + y * y + z * z <= (diameterMm / 2) ** 2) cubes += 1;
+        }
+      }
+      let spread = 0;
+      for (let line = 0; line < 256; line++) {
+        const angle = (2 * Math.PI * (line - 128) * y) / pixelPhaseMm / 256;
+        spread += ((target[line]! - background[line]!) * Math.cos(angle)) / 256;
+      }
+      sum += (spread * cubes * step ** 3) / (pixelPhaseMm * pixelFrequencyMm * sliceThicknessMm);
+    }
+    const g = { diameterMm, pixelPhaseMm, pixelFrequencyMm, sliceThicknessMm };
+    expect(targetContrast(target, background, g) / sum).toBeCloseTo(1, 2);
+  });
+
   it('large: the plain difference at the centre of k-space', () => {
     expect(at(200)).toBeCloseTo(0.35, 2);
   });

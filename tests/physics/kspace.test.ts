@@ -50,6 +50,37 @@ describe('which echo fills which line', () => {
       expect(plan({ wantedEffectiveEchoTimeMs: wanted }).effectiveEchoTimeMs).toBe(wanted);
     }
   });
+  it('linear: any echo of any train can be put on the centre, also where lines and train do not divide', () => {
+    // Found wrong once: 60 lines, a train of 16, 160 ms wanted gave 10 ms.
+    for (const phaseLines of [60, 97, 153, 208, 255]) {
+      for (const echoTrainLength of [4, 7, 16, 19, 27]) {
+        for (let echo = 1; echo <= echoTrainLength; echo++) {
+          const wantedEffectiveEchoTimeMs = echo * 10;
+          const p = plan({ phaseLines, echoTrainLength, wantedEffectiveEchoTimeMs });
+          expect(p.effectiveEchoTimeMs).toBe(wantedEffectiveEchoTimeMs);
+        }
+      }
+    }
+  });
+  it('no two lines share a shot and an echo, and every shot and echo is used', () => {
+    for (const order of ['linear', 'centric', 'single-shot'] as const) {
+      for (const phaseLines of [60, 97, 153, 256]) {
+        for (const echoTrainLength of [1, 7, 16, 19]) {
+          const p = plan({ order, phaseLines, echoTrainLength });
+          const places = new Set<number>();
+          p.echoOfLine.forEach((e, line) => places.add(e * 1000 + (p.shotOfLine[line] ?? NaN)));
+          expect(places.size).toBe(phaseLines);
+          expect(new Set(p.shotOfLine).size).toBe(p.shots);
+          expect(new Set(p.echoOfLine).size).toBe(p.echoTrainLength);
+        }
+      }
+    }
+  });
+  it('centric: no line further out is read before one further in, whatever is missing', () => {
+    const p = plan({ order: 'centric', phaseLines: 200, partialFourier: 0.6 });
+    for (let k = 1; k < 99; k++)
+      expect(p.echoOfLine[100 + k + 1]).toBeGreaterThanOrEqual(p.echoOfLine[100 + k] ?? NaN);
+  });
   it('every echo is used equally often, whatever the order', () => {
     for (const order of ['linear', 'centric'] as const) {
       const p = plan({ order, wantedEffectiveEchoTimeMs: 90 });
@@ -74,5 +105,9 @@ describe('which echo fills which line', () => {
     expect(() => plan({ partialFourier: 0.5 })).toThrow('Partial Fourier');
     expect(() => plan({ phaseLines: 0 })).toThrow('phase lines');
     expect(() => plan({ echoTrainLength: 0 })).toThrow('RF Echo Train Length');
+    expect(() => plan({ parallelFactor: NaN })).toThrow('Parallel Reduction Factor');
+    expect(() => plan({ referenceLines: -1 })).toThrow('reference lines');
+    expect(() => plan({ echoSpacingMs: Infinity })).toThrow('echo spacing');
+    expect(() => plan({ wantedEffectiveEchoTimeMs: NaN })).toThrow('wanted echo time');
   });
 });

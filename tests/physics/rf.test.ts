@@ -24,6 +24,16 @@ describe('RF exposure', () => {
   ])('90 and %d x %d degrees: %d', (count, deg, units) => {
     expect(energy(train(count, deg))).toBeCloseTo(units, 2);
   });
+  it('refocusing by 120 takes four ninths of the energy of 180', () => {
+    // Derived, checks section 6.
+    expect(energy([120]) / energy([180])).toBeCloseTo(4 / 9, 12);
+  });
+  it('is a mean over time: twice the window, root half the field', () => {
+    expect(b1RmsMicroTesla([hard(90)], 1000) / b1RmsMicroTesla([hard(90)], 2000)).toBeCloseTo(
+      Math.SQRT2,
+      12,
+    );
+  });
   it('from 1.5 to 3 T the same pulses count four times', () => {
     expect(relativeEnergy(3, 2, 60) / relativeEnergy(1.5, 2, 60)).toBeCloseTo(4, 12);
   });

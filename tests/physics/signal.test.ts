@@ -19,6 +19,23 @@ const simulated = {
   lesion: [752, 237, 0.76],
 } as const;
 
+describe('the echo time that tells two tissues best apart', () => {
+  // ln(b/a) a b / (b - a) for TR >> T1 and equal proton density: derived, checks section 7.
+  it.each([
+    [79.6, 110, 93.17],
+    [85, 133, 105.44],
+    [34, 61, 44.9],
+  ])('T2 %d against %d: %d ms', (a, b, best) => {
+    const apart = (echoTimeMs: number) => {
+      const s = { t1Ms: 1, protonDensity: 1, repetitionTimeMs: 1e6, echoTimeMs };
+      return spinEchoSignal({ ...s, t2Ms: b }) - spinEchoSignal({ ...s, t2Ms: a });
+    };
+    expect((Math.log(b / a) * a * b) / (b - a)).toBeCloseTo(best, 2);
+    expect(apart(best)).toBeGreaterThan(apart(best - 1));
+    expect(apart(best)).toBeGreaterThan(apart(best + 1));
+  });
+});
+
 describe('spin echo', () => {
   // Table of the checks, section 7: simple (exact) signal for the simulated-brain tissues.
   const rows: [number, number, Record<keyof typeof simulated, [number, number]>][] = [
@@ -93,7 +110,11 @@ describe('inversion null', () => {
   it('is T1 ln 2 for an endless repeat, and counts the recovery from the last echo', () => {
     expect(inversionNullMs(4300)).toBeCloseTo(2980.5, 1);
     expect(Math.abs(inversionNullMs(4300, 9000, 200) - 2458.1)).toBeLessThan(0.06);
+    // Fat, T1 ln 2: derived, checks section 7.
     expect(inversionNullMs(288)).toBeCloseTo(199.6, 1);
+    expect(Math.abs(inversionNullMs(343) - 237.7)).toBeLessThan(0.06);
+    expect(inversionNullMs(371)).toBeCloseTo(257.2, 1);
+    expect(inversionNullMs(382)).toBeCloseTo(264.8, 1);
   });
   it('really nulls the steady-state train', () => {
     // A perfect-180 train of even length leaves no longitudinal magnetisation: recovery starts at its end.
