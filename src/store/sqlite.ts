@@ -1,11 +1,9 @@
 import { closeSync, mkdirSync, openSync } from 'node:fs';
 import { dirname, resolve } from 'node:path';
 import {
-  CompiledQuery,
   Kysely,
   SqliteDialect,
   SqliteDriver,
-  type DatabaseConnection,
   type SqliteDatabase,
   type SqliteStatement,
 } from 'kysely';
@@ -23,8 +21,7 @@ const busyTimeoutMs = 40;
 export async function openSqlite(file: string): Promise<Database> {
   const path = file === ':memory:' ? file : resolve(file);
   const libsql = await retried(() => Promise.resolve().then(() => openFile(path)));
-  const database = guarded(libsql);
-  const kysely = new Kysely<Tables>({ dialect: new ImmediateDialect({ database }) });
+  const kysely = new Kysely<Tables>({ dialect: new ImmediateDialect(libsql) });
   const nothingMore = () => Promise.resolve();
   return {
     kind: 'sqlite',
@@ -33,7 +30,10 @@ export async function openSqlite(file: string): Promise<Database> {
     lockForWriting: nothingMore,
     lockForSchema: nothingMore,
     copyInto: async (copy) => {
-      await kysely.executeQuery(CompiledQuery.raw('vacuum into ?', [copy]));
+      // On a connection nobody is using, and not prepared, like the transactions below.
+      await kysely.connection().execute(async () => {
+        libsql.exec(`vacuum into '${copy.replaceAll("'", "''")}'`);
+      });
     },
     listeners: listenersToCommits(),
     close: () => kysely.destroy(),
@@ -71,20 +71,32 @@ function openFile(path: string): LibsqlDatabase.Database {
 }
 
 class ImmediateDialect extends SqliteDialect {
-  readonly #database: SqliteDatabase;
-  constructor(config: { readonly database: SqliteDatabase }) {
-    super(config);
-    this.#database = config.database;
+  constructor(private readonly libsql: LibsqlDatabase.Database) {
+    super({ database: guarded(libsql) });
   }
   override createDriver() {
-    return new ImmediateDriver({ database: this.#database });
+    return new ImmediateDriver(this.libsql);
   }
 }
 
-/** Every transaction of ours writes, so it takes the write lock at once and never fails half-way for it. */
+/**
+ * Every transaction of ours writes, so it takes the write lock at once and never fails half-way for it.
+ * Without prepared statements, because libsql leaves one that met a busy database unfinished until it is
+ * collected as garbage, and until then every commit of the connection fails.
+ */
 class ImmediateDriver extends SqliteDriver {
-  override async beginTransaction(connection: DatabaseConnection): Promise<void> {
-    await connection.executeQuery(CompiledQuery.raw('begin immediate'));
+  constructor(private readonly libsql: LibsqlDatabase.Database) {
+    super({ database: guarded(libsql) });
+  }
+  override async beginTransaction(): Promise<void> {
+    this.libsql.exec('begin immediate');
+  }
+  override async commitTransaction(): Promise<void> {
+    this.libsql.exec('commit');
+  }
+  override async rollbackTransaction(): Promise<void> {
+    // Some faults (a full disk) have ended the transaction already.
+    if (this.libsql.inTransaction) this.libsql.exec('rollback');
   }
 }
 

@@ -71,6 +71,7 @@ function unreachable(error: unknown): ProblemError {
     thing: 'database server',
     value: typeof code === 'string' ? code : name,
     limit: 'it must accept the connection string, and tables may be made in its schema',
-    wayOut: 'Check host, port, database, user and rights; the connection string itself is not shown.',
+    wayOut:
+      'Check host, port, database, user and rights; the connection string itself is not shown.',
   });
 }

@@ -105,16 +105,7 @@ export const examRequest = (id: string, more: Partial<ExamRequest> = {}): ExamRe
   ...more,
 });
 
-export const day = '2026-12-08';
-
-/** A place on scanner mr1; minutes since midnight. */
-export const at = (startMin: number, slotMin: number, teams: readonly string[] = []) => ({
-  scannerId: 'mr1',
-  date: day,
-  startMin,
-  slotMin,
-  teams,
-});
+export { at, day } from './ground-places.js';
 
 /** The outcome if it is of the kind expected; the test ends here if not. */
 export function expectKind<O extends { readonly kind: string }, K extends O['kind']>(
