@@ -46,9 +46,9 @@ export function createApp(given: WebDeps): Express {
   app.use(
     rateLimit({ windowMs: 60_000, limit: 1200, standardHeaders: true, legacyHeaders: false }),
   );
+  app.use(pageLocals(deps));
   app.use(sameOriginOnly);
   app.use(express.urlencoded({ extended: false, limit: '64kb' }));
-  app.use(pageLocals(deps));
   app.use(whoRoutes());
   app.use(boardRoutes(deps));
   app.use(bookingRoutes(deps));

@@ -1,8 +1,10 @@
-import { Router, type Response } from 'express';
+import { Router, type Request, type Response } from 'express';
 import type { Scanner } from '../../day/index.js';
 import { bestScanner, type ExamRequest } from '../../planning/index.js';
 import type { Problem } from '../../shared/index.js';
+import type { StoredRequest } from '../../store/index.js';
 import type { PageDeps } from '../deps.js';
+import { summaryOf } from '../planner.js';
 import { planSheet } from '../view-models/plan-sheet.js';
 import {
   formValues,
@@ -120,24 +122,33 @@ export function requestRoutes(deps: PageDeps): Router {
       whoIs(request),
       deps.now(),
     );
-    if (changed.kind === 'stale') {
-      const problem: Problem = {
-        code: 'stale',
-        thing: 'the form',
-        value: 'somebody else changed this request meanwhile',
-        limit: 'only the newest version can be changed',
-        wayOut:
-          'Your answers are still here. Open the request in another tab, compare, and save again.',
-      };
-      await showForm(response, values, [problem], {
+    if (changed.kind !== 'changed') {
+      await showForm(response, values, [notSaved(changed)], {
         kind: 'edit',
         id: stored.id,
         version: stored.version,
       });
       return;
     }
+    await planAgain(changed.request, request);
     response.redirect(303, `/requests/${encodeURIComponent(stored.id)}`);
   });
+
+  /** A booked request that was changed keeps its place; its plan is made anew, so that the board shows what it gets now. */
+  async function planAgain(stored: StoredRequest, request: Request) {
+    const booking = await deps.store.bookings.ofRequest(stored.id);
+    const scanner = deps.department.scanners.find((s) => s.id === booking?.scannerId);
+    if (booking === undefined || scanner === undefined || booking.plan !== null) return;
+    const outcome = await planner.plan(stored.body, scanner, booking.slotMin * 60);
+    if (outcome.kind === 'refused') return;
+    await deps.store.bookings.keepPlan(
+      booking.id,
+      booking.version,
+      summaryOf(outcome.plan),
+      whoIs(request),
+      deps.now(),
+    );
+  }
 
   async function lookAt(values: FormValues) {
     const exam = library.exams.get(values['exam'] ?? '');
@@ -224,4 +235,24 @@ function examProblem(body: ExamRequest, known: boolean): Problem | undefined {
     limit: 'an exam of the site library',
     wayOut: 'Choose an exam from the list.',
   };
+}
+
+/** Why a change was not saved, with the answers still in the form. */
+function notSaved(outcome: { readonly kind: string; readonly why: string }): Problem {
+  return outcome.kind === 'stale'
+    ? {
+        code: 'stale',
+        thing: 'the form',
+        value: 'somebody else changed this request meanwhile',
+        limit: 'only the newest version can be changed',
+        wayOut:
+          'Your answers are still here. Open the request in another tab, compare, and save again.',
+      }
+    : {
+        code: 'refused',
+        thing: 'the form',
+        value: outcome.why,
+        limit: 'nothing was changed',
+        wayOut: 'Your answers are still here. Open the day board to see what stands in the way.',
+      };
 }
