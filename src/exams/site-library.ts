@@ -30,3 +30,15 @@ export function viewsFor(exam: Exam, questions: readonly ClinicalQuestion[]): re
   }
   return exam.views.filter((v) => wanted.has(v.id));
 }
+
+/** Every view that lists a sequence, with its exam. */
+export function viewsOfSequence(
+  library: SiteLibrary,
+  sequenceId: string,
+): readonly { readonly exam: Exam; readonly view: View }[] {
+  return [...library.exams.values()].flatMap((exam) =>
+    exam.views
+      .filter((view) => view.candidates.includes(sequenceId))
+      .map((view) => ({ exam, view })),
+  );
+}

@@ -10,3 +10,4 @@ export * from './radial-weights.js';
 export * from './assess.js';
 export * from './scanner.js';
 export * from './rf-exposure.js';
+export * from './preview-input.js';

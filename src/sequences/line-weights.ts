@@ -135,7 +135,7 @@ function diffusionSignal(sequence: Sequence, tissue: Tissue): LineSignal {
 }
 
 /** Part of the signal left by spectral fat suppression. Inversion acts through the recovery itself. */
-function fatLeft(sequence: Sequence, tissue: Tissue): number {
+export function fatLeft(sequence: Sequence, tissue: Tissue): number {
   if (sequence.fatSuppression !== 'spectral') return 1;
   return 1 - (tissue.fatFraction ?? 0) * (1 - sequence.fatResidual);
 }

@@ -27,6 +27,11 @@ const pages = [
   '/requests/R-106',
   '/requests/R-106/edit',
   '/owed',
+  '/library',
+  '/library/exams/brain-general',
+  '/library/sequences/head-ax-t2-ss-half?field=3',
+  '/policy',
+  '/methods',
   '/no-such-page',
 ];
 
