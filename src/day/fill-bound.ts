@@ -1,0 +1,143 @@
+import { noonStep, type Ground, type SlotOption } from './fill-problem.js';
+
+export type BoundTier = 'diagnostic' | 'targeted' | 'screening';
+
+/** Prices are multiples of this, so that sums of them are exact and the bound is a proof, not a rounding. */
+const priceUnit = 1 / 1024;
+
+/**
+ * No filling can be worth more than this in one tier. Lagrangian relaxation (Geoffrion 1974) of "each request at most once":
+ * every request gets a price, then each free stretch is filled on its own by a longest path over its five-minute steps. Any
+ * prices give a true bound; subgradient steps (Held, Wolfe and Crowder 1974) look for good ones. The best prices give the
+ * bound of the time-indexed linear programme, because a longest path has whole optima of its own.
+ * Teams, coils and the order of tiers are left out, which can only raise the bound.
+ *
+ * @param reached a worth known to be reachable, for the step length only
+ */
+export function upperBound(
+  ground: Ground,
+  tier: BoundTier,
+  reached: number,
+  rounds = 400,
+): { readonly bound: number; readonly prices: readonly number[] } {
+  const worth = (option: SlotOption) => option[tier];
+  const count = ground.problem.waiting.length;
+  const most = new Array<number>(count).fill(0);
+  for (const line of ground.lines)
+    line.windows.forEach((w, r) => {
+      for (const option of w?.options ?? [])
+        most[r] = Math.max(most[r]!, w!.factor * worth(option));
+    });
+  // Everybody served at their best is a bound already.
+  let bound = most.reduce((a, b) => a + b, 0);
+  let best = most as readonly number[];
+  let prices = most.map((m) => Math.round(m / 2 / priceUnit) * priceUnit);
+  let step = 1.5;
+  let since = 0;
+  const tables = lineTables(ground);
+  for (let round = 0; round < rounds && Math.floor(bound + 1e-9) > reached; round++) {
+    const { value, uses } = relaxed(ground, worth, prices, tables);
+    if (value < bound) {
+      if (value < bound - 1e-4 * bound) since = 0;
+      bound = value;
+      best = prices;
+    } else since++;
+    if (since > 12) {
+      step /= 1.6;
+      since = 0;
+      prices = [...best];
+      if (step < 1e-3) break;
+      continue;
+    }
+    let norm = 0;
+    uses.forEach((n, r) => {
+      const g = 1 - n;
+      if (!(prices[r] === 0 && g > 0)) norm += g * g;
+    });
+    if (norm === 0) break;
+    const length = (step * (value - Math.max(reached, 0.97 * bound))) / norm;
+    prices = prices.map(
+      (u, r) =>
+        Math.max(0, Math.min(most[r]!, Math.round((u - length * (1 - uses[r]!)) / priceUnit))) *
+        priceUnit,
+    );
+    prices = prices.map((u, r) => Math.min(u, most[r]!));
+  }
+  return { bound: Math.floor(bound + 1e-9), prices: best };
+}
+
+interface LineTable {
+  readonly longest: number;
+}
+
+function lineTables(ground: Ground): readonly LineTable[] {
+  return ground.lines.map((line) => ({
+    longest: Math.max(
+      0,
+      ...line.windows.flatMap((w) => (w === undefined ? [] : w.options.map((o) => o.steps))),
+    ),
+  }));
+}
+
+/** Worth of the relaxed problem under these prices, and how often it uses each request. */
+function relaxed(
+  ground: Ground,
+  worth: (option: SlotOption) => number,
+  prices: readonly number[],
+  tables: readonly LineTable[],
+): { readonly value: number; readonly uses: readonly number[] } {
+  const uses = new Array<number>(prices.length).fill(0);
+  let value = prices.reduce((a, b) => a + b, 0);
+  ground.lines.forEach((line, l) => {
+    const stretches = ground.ofLine[l] ?? [];
+    if (stretches.length === 0) return;
+    const { longest } = tables[l]!;
+    // Best gain per length, before noon and from noon on.
+    const gain = [new Float64Array(longest + 1), new Float64Array(longest + 1)];
+    const who = [new Int32Array(longest + 1).fill(-1), new Int32Array(longest + 1).fill(-1)];
+    line.windows.forEach((w, r) => {
+      if (w === undefined) return;
+      for (const option of w.options) {
+        const g = w.factor * worth(option) - prices[r]!;
+        if (g <= 0) continue;
+        for (let half = 0; half < 2; half++) {
+          const may = half === 0 ? w.release < noonStep : w.last >= noonStep;
+          if (may && g > gain[half]![option.steps]!) {
+            gain[half]![option.steps] = g;
+            who[half]![option.steps] = r;
+          }
+        }
+      }
+    });
+    for (const s of stretches) {
+      const { from, to } = ground.stretches[s]!;
+      const best = new Float64Array(to - from + 1);
+      const pick = new Int32Array(to - from + 1);
+      for (let t = to - 1; t >= from; t--) {
+        const half = t < noonStep ? 0 : 1;
+        let top = best[t + 1 - from]!;
+        let length = 0;
+        const room = Math.min(longest, to - t);
+        for (let n = 1; n <= room; n++) {
+          const g = gain[half]![n]!;
+          if (g > 0 && g + best[t + n - from]! > top) {
+            top = g + best[t + n - from]!;
+            length = n;
+          }
+        }
+        best[t - from] = top;
+        pick[t - from] = length;
+      }
+      value += best[0]!;
+      for (let t = from; t < to; ) {
+        const n = pick[t - from]!;
+        if (n === 0) t++;
+        else {
+          uses[who[t < noonStep ? 0 : 1]![n]!]! += 1;
+          t += n;
+        }
+      }
+    }
+  });
+  return { value, uses };
+}
