@@ -3,6 +3,7 @@ import { clock } from '../day/index.js';
 import type { StoredBooking } from '../store/index.js';
 import { isoDate, readGap } from './board-fields.js';
 import type { PageDeps } from './deps.js';
+import { dayFrom } from './site-time.js';
 import { dayBoard } from './view-models/day-board.js';
 import { gapOffers } from './view-models/gap-offers.js';
 
@@ -47,6 +48,8 @@ export function boardPage(deps: PageDeps) {
       title: `Day board, ${date}`,
       board,
       days: deps.department.days,
+      dayBefore: dayFrom(date, -1),
+      dayAfter: dayFrom(date, 1),
       scanners: deps.department.scanners,
       waitingCount: waiting.length,
       gap:

@@ -1,8 +1,8 @@
 import { Router } from 'express';
-import { DateTime } from 'luxon';
 import { grades, gradeWords, type Grade } from '../../exams/index.js';
 import { ProblemError } from '../../shared/index.js';
 import type { PageDeps } from '../deps.js';
+import { dayFrom, siteDate } from '../site-time.js';
 import { whoIs } from '../who.js';
 
 /** Answers owed: what a done exam left below diagnostic, until it is answered or a clinician signs it off. */
@@ -14,7 +14,7 @@ export function owedRoutes(deps: PageDeps): Router {
   router.get('/owed', async (request, response) => {
     const items = await deps.store.owed.list();
     const requests = new Map((await deps.store.requests.list()).map((r) => [r.id, r]));
-    const today = DateTime.fromMillis(deps.now(), { zone: deps.department.zone }).toISODate() ?? '';
+    const today = siteDate(deps.now(), deps.department.zone);
     response.render('owed', {
       title: 'Answers owed',
       open: items
@@ -105,8 +105,7 @@ export function owedRoutes(deps: PageDeps): Router {
       (q) => stored.body.questionIds.length === 0 || stored.body.questionIds.includes(q.id),
     );
     const days = deps.ground.library.policy.owed.dueDays[stored.body.priority].value;
-    const dueDate =
-      DateTime.fromISO(booking.date, { zone: 'utc' }).plus({ days }).toISODate() ?? booking.date;
+    const dueDate = dayFrom(booking.date, days);
     const outcome = await deps.store.owed.recordDone(
       {
         bookingId: booking.id,

@@ -2,6 +2,7 @@ import { Router } from 'express';
 import { clock } from '../../day/index.js';
 import { bestScanner } from '../../planning/index.js';
 import type { PageDeps } from '../deps.js';
+import { siteTime } from '../site-time.js';
 import { planSheet } from '../view-models/plan-sheet.js';
 
 const longestSlotMin = 480;
@@ -42,7 +43,11 @@ export function planSheetRoutes(deps: PageDeps): Router {
       exam: deps.ground.library.exams.get(stored.body.examId),
       problems: outcome.kind === 'refused' ? outcome.problems : [],
       sheet: outcome.kind === 'planned' ? planSheet(outcome.plan, { linkTo: address }) : undefined,
-      history,
+      history: history.map(({ who, action, atMs }) => ({
+        who,
+        action,
+        when: siteTime(atMs, deps.department.zone),
+      })),
     });
   });
   return router;

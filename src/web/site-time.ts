@@ -1,0 +1,16 @@
+import { DateTime } from 'luxon';
+
+/** An instant in the site's zone, 24-hour, with its offset where a clock change makes the hour ambiguous to a reader. */
+export function siteTime(atMs: number, zone: string): string {
+  return DateTime.fromMillis(atMs, { zone }).toFormat('yyyy-MM-dd HH:mm ZZ');
+}
+
+/** The site's date at an instant. */
+export function siteDate(atMs: number, zone: string): string {
+  return DateTime.fromMillis(atMs, { zone }).toFormat('yyyy-MM-dd');
+}
+
+/** A date some days away, by the calendar: clock changes do not move it. */
+export function dayFrom(date: string, days: number): string {
+  return DateTime.fromISO(date, { zone: 'utc' }).plus({ days }).toFormat('yyyy-MM-dd');
+}
