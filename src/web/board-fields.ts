@@ -3,9 +3,6 @@ import { parseDurationS } from '../interchange/index.js';
 import { ProblemError, sayProblem } from '../shared/index.js';
 import type { WebDeps } from './deps.js';
 
-/** A day in an address. */
-export const isoDate = /^\d{4}-\d{2}-\d{2}$/;
-
 /** `mr1_540_570`, checked against the scanners; the gap may have shrunk since, the database has the last word. */
 export function readGap(
   value: unknown,

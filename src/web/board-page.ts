@@ -1,17 +1,12 @@
 import type { Request, Response } from 'express';
 import { clock } from '../day/index.js';
 import type { StoredBooking } from '../store/index.js';
-import { isoDate, readGap } from './board-fields.js';
+import { gone, readGap } from './board-fields.js';
 import type { PageDeps } from './deps.js';
-import { dayFrom } from './site-time.js';
+import { dayFrom, isDay } from './site-time.js';
+import { takeTold, type Told } from './told.js';
 import { dayBoard } from './view-models/day-board.js';
 import { gapOffers } from './view-models/gap-offers.js';
-
-/** What a page says about the change that led to it. */
-export interface Told {
-  readonly kind: 'told' | 'refused';
-  readonly text: string;
-}
 
 /** The day board as a page, shown by itself or with the answer to a change. */
 export function boardPage(deps: PageDeps) {
@@ -34,7 +29,7 @@ export function boardPage(deps: PageDeps) {
 
   async function show(request: Request, response: Response, message?: Told) {
     const date = String(request.params['date']);
-    if (!isoDate.test(date)) return response.redirect(303, `/day/${deps.department.days[0]}`);
+    if (!isDay(date)) throw gone('day', date);
     const { board, bookings, requests } = await data(date);
     const opened =
       typeof request.query['booking'] === 'string'
@@ -65,19 +60,11 @@ export function boardPage(deps: PageDeps) {
               examName(requests.get(opened.requestId)?.body.examId ?? ''),
               board,
             ),
-      message: message ?? told(request),
+      message: message ?? takeTold(request, response),
     });
   }
 
   return { data, show };
-}
-
-function told(request: Request): Told | undefined {
-  for (const kind of ['told', 'refused'] as const) {
-    const text = request.query[kind];
-    if (typeof text === 'string' && text !== '') return { kind, text: text.slice(0, 300) };
-  }
-  return undefined;
 }
 
 function openedBooking(booking: StoredBooking, exam: string, board: ReturnType<typeof dayBoard>) {

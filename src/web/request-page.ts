@@ -4,7 +4,7 @@ import { bestScanner, type ExamRequest } from '../planning/index.js';
 import type { Problem } from '../shared/index.js';
 import type { PageDeps } from './deps.js';
 import { planSheet } from './view-models/plan-sheet.js';
-import { readForm, requestForm, type FormValues } from './view-models/request-form.js';
+import { inFormWords, readForm, requestForm, type FormValues } from './view-models/request-form.js';
 
 /** Whether the form takes a new request or changes one. */
 export type FormMode =
@@ -21,7 +21,8 @@ export function requestPage(deps: PageDeps) {
     if (exam === undefined) return { exam: undefined, problems: [] as readonly Problem[] };
     const read = readForm({ ...values, request_id: values['request_id'] || 'new' });
     const chosenQuestions = (values['questions'] ?? '').split(';');
-    if (read.kind === 'refused') return { exam, chosenQuestions, problems: read.problems };
+    if (read.kind === 'refused')
+      return { exam, chosenQuestions, problems: inFormWords(read.problems) };
     const asked: ExamRequest = {
       ...read.value.request,
       questionIds: read.value.request.questionIds.filter((q) =>
@@ -31,7 +32,8 @@ export function requestPage(deps: PageDeps) {
     const scanner = scannerFor(asked, values['scanner']);
     if (scanner === undefined) return { exam, chosenQuestions, problems: [] };
     const outcome = await planner.plan(asked, scanner);
-    if (outcome.kind === 'refused') return { exam, chosenQuestions, problems: outcome.problems };
+    if (outcome.kind === 'refused')
+      return { exam, chosenQuestions, problems: inFormWords(outcome.problems) };
     return {
       exam,
       chosenQuestions,

@@ -14,3 +14,8 @@ export function siteDate(atMs: number, zone: string): string {
 export function dayFrom(date: string, days: number): string {
   return DateTime.fromISO(date, { zone: 'utc' }).plus({ days }).toFormat('yyyy-MM-dd');
 }
+
+/** Whether a text is a day of the calendar, as year-month-day. */
+export function isDay(text: string): boolean {
+  return /^\d{4}-\d{2}-\d{2}$/.test(text) && DateTime.fromISO(text, { zone: 'utc' }).isValid;
+}

@@ -53,6 +53,16 @@ describe('the application under simultaneous demand', () => {
     }
   });
 
+  it('takes no words from an address, and knows which days there are', async () => {
+    const page = await (await fetch(`${site.url}/day/2026-12-10?told=All+scanners+closed`)).text();
+    expect(page).not.toContain('All scanners closed');
+    expect((await fetch(`${site.url}/day/2026-02-30`)).status).toBe(422);
+    expect(
+      (await post('/day/2026-02-30/place', { request: 'Q-3', scanner: 'mr1', start: '10:00' }))
+        .status,
+    ).toBe(422);
+  });
+
   it('shows what was typed as text, never as markup', async () => {
     const note = '<script>alert(1)</script>"\'';
     await site.store.requests.add(requestFor('knee', { id: 'X-1', note }), 'test', 0);
@@ -83,7 +93,7 @@ describe('the application under simultaneous demand', () => {
       })
     ).text();
     expect(page).toContain('value="comes by bus"');
-    expect(page).toContain('field slot');
+    expect(page).toContain('<strong>Slot:</strong>');
   });
 
   it('says no more than it must when something breaks inside', async () => {

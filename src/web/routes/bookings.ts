@@ -2,10 +2,12 @@ import { Router, type Request, type Response } from 'express';
 import { clock, type Scanner } from '../../day/index.js';
 import { ProblemError } from '../../shared/index.js';
 import type { PlacingOutcome } from '../../store/index.js';
-import { gone, isoDate, readClock, readSlotMin, refuseOutsideHours } from '../board-fields.js';
+import { gone, readClock, readSlotMin, refuseOutsideHours } from '../board-fields.js';
 import { boardPage } from '../board-page.js';
 import type { PageDeps } from '../deps.js';
 import { summaryOf } from '../planner.js';
+import { isDay } from '../site-time.js';
+import { tell } from '../told.js';
 import { whoIs } from '../who.js';
 
 /** Changes on the board: place, move, resize, cancel, undo. The database decides; a refusal is explained on the board. */
@@ -16,6 +18,7 @@ export function bookingRoutes(deps: PageDeps): Router {
 
   router.post('/day/:date/place', async (request, response) => {
     const date = String(request.params.date);
+    if (!isDay(date)) throw gone('day', date);
     const form = request.body as Record<string, string>;
     const stored = await deps.store.requests.get(form['request'] ?? '');
     const scanner = deps.department.scanners.find((s) => s.id === form['scanner']);
@@ -58,7 +61,7 @@ export function bookingRoutes(deps: PageDeps): Router {
     if (scanner === undefined) throw gone('scanner', form['scanner'] ?? '');
     const stored = await deps.store.requests.get(booking.requestId);
     if (stored === undefined) throw gone('request', booking.requestId);
-    const date = isoDate.test(form['date'] ?? '') ? form['date']! : booking.date;
+    const date = isDay(form['date'] ?? '') ? form['date']! : booking.date;
     const startMin = form['start'] === undefined ? booking.startMin : readClock(form['start']);
     const slotMin = form['slot'] === undefined ? booking.slotMin : readSlotMin(form['slot']);
     refuseOutsideHours(booking.requestId, scanner, date, startMin, slotMin, deps);
@@ -101,13 +104,11 @@ export function bookingRoutes(deps: PageDeps): Router {
 
   router.post('/undo', async (request, response) => {
     const form = request.body as Record<string, string>;
-    const date = isoDate.test(form['date'] ?? '') ? form['date']! : (deps.department.days[0] ?? '');
+    const date = isDay(form['date'] ?? '') ? form['date']! : (deps.department.days[0] ?? '');
     const undone = await deps.store.history.undoLast(whoIs(request), deps.now());
     const text = undone.kind === 'undone' ? `Undone: ${undone.what}.` : undone.why;
-    response.redirect(
-      303,
-      `/day/${date}?${undone.kind === 'undone' ? 'told' : 'refused'}=${encodeURIComponent(text)}`,
-    );
+    tell(response, undone.kind === 'undone' ? 'told' : 'refused', text);
+    response.redirect(303, `/day/${date}`);
   });
 
   async function answer(
@@ -118,10 +119,8 @@ export function bookingRoutes(deps: PageDeps): Router {
     done: string,
   ) {
     if (outcome.kind === 'placed') {
-      response.redirect(
-        303,
-        `/day/${date}?told=${encodeURIComponent(done)}&booking=${encodeURIComponent(outcome.booking.id)}`,
-      );
+      tell(response, 'told', done);
+      response.redirect(303, `/day/${date}?booking=${encodeURIComponent(outcome.booking.id)}`);
       return;
     }
     request.params['date'] = date;

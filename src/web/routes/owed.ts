@@ -3,6 +3,7 @@ import { grades, gradeWords, type Grade } from '../../exams/index.js';
 import { ProblemError } from '../../shared/index.js';
 import type { PageDeps } from '../deps.js';
 import { dayFrom, siteDate } from '../site-time.js';
+import { takeTold, tell } from '../told.js';
 import { whoIs } from '../who.js';
 
 /** Answers owed: what a done exam left below diagnostic, until it is answered or a clinician signs it off. */
@@ -31,7 +32,7 @@ export function owedRoutes(deps: PageDeps): Router {
       waiting: [...requests.values()]
         .filter((r) => r.status === 'waiting' || r.status === 'booked')
         .map((r) => ({ id: r.id, exam: examName(r.body.examId) })),
-      told: typeof request.query['told'] === 'string' ? request.query['told'].slice(0, 300) : '',
+      told: takeTold(request, response)?.text ?? '',
     });
   });
 
@@ -45,7 +46,8 @@ export function owedRoutes(deps: PageDeps): Router {
       deps.now(),
     );
     settle(outcome);
-    response.redirect(303, '/owed?told=Follow-up+noted.+The+answer+stays+owed+until+it+is+given.');
+    tell(response, 'told', 'Follow-up noted. The answer stays owed until it is given.');
+    response.redirect(303, '/owed');
   });
 
   router.post('/owed/:id/sign-off', async (request, response) => {
@@ -69,7 +71,8 @@ export function owedRoutes(deps: PageDeps): Router {
       deps.now(),
     );
     settle(outcome);
-    response.redirect(303, '/owed?told=Signed+off.');
+    tell(response, 'told', 'Signed off.');
+    response.redirect(303, '/owed');
   });
 
   /** The exam is done: what each question got. Planned grades are offered; lower or higher ones can be said. */
@@ -121,10 +124,8 @@ export function owedRoutes(deps: PageDeps): Router {
       deps.now(),
     );
     settle(outcome);
-    response.redirect(
-      303,
-      `/owed?told=${encodeURIComponent(`${stored.id} is done; what it left open stands below.`)}`,
-    );
+    tell(response, 'told', `${stored.id} is done; what it left open stands below.`);
+    response.redirect(303, '/owed');
   });
 
   return router;

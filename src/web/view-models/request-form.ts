@@ -72,7 +72,7 @@ export function requestForm(
       transports,
       dayParts,
     },
-    problems,
+    problems: inFormWords(problems),
   };
 }
 
@@ -95,9 +95,39 @@ export function readForm(values: FormValues): Result<BookedRequest> {
   return readRow(rest, 'the form');
 }
 
-/** Field named by a problem of the form: "the form, field slot" -> "slot". */
-export function fieldOf(problem: Problem): string {
-  return /field ([a-z0-9_]+)$/.exec(problem.thing)?.[1] ?? '';
+/** What the form calls its fields. */
+const fieldLabels: Readonly<Record<string, string>> = {
+  request_id: 'Request number',
+  exam: 'Exam',
+  questions: 'What does the referrer ask?',
+  still_for: 'How long can you lie flat and still?',
+  hold_breath_for: 'How long can you hold your breath?',
+  stay_for: 'How long can you bear it in the scanner?',
+  follows_instructions: 'Can you follow instructions?',
+  said_by: 'Who says so?',
+  age_years: 'Age',
+  slot: 'Slot',
+  priority: 'Priority',
+  due_date: 'Answer due by',
+  can_come_from: 'Can come from',
+  can_come_until: 'Can come until',
+  can_come_part: 'Can come in the',
+  conditions: 'Anything that makes it hard',
+  contrast: 'Contrast medium',
+  safety_screening: 'Safety screening',
+  transport: 'Comes',
+  patient_class: 'Patient',
+  escort: 'Escort',
+  b1rms_limit_microtesla: 'B1+rms limit',
+};
+
+/** Problems in the form's own words instead of the column names of a list. */
+export function inFormWords(problems: readonly Problem[]): readonly Problem[] {
+  return problems.map((problem) => {
+    const field = /field ([a-z0-9_]+)$/.exec(problem.thing)?.[1] ?? '';
+    const label = fieldLabels[field];
+    return label === undefined ? problem : { ...problem, thing: label };
+  });
 }
 
 /** A stored request as form values again, for changing it. */
