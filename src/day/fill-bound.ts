@@ -129,7 +129,7 @@ function relaxed(
         pick[t - from] = length;
       }
       value += best[0]!;
-      for (let t = from; t < to; ) {
+      for (let t = from; t < to;) {
         const n = pick[t - from]!;
         if (n === 0) t++;
         else {

@@ -2,3 +2,14 @@ export * from './scanners.js';
 export * from './conflicts.js';
 export * from './gaps.js';
 export * from './fits.js';
+export * from './offers.js';
+export {
+  priorityWorth,
+  type FillProblem,
+  type TakenPlace,
+  type WaitingRequest,
+} from './fill-problem.js';
+export { compareFills, type FillObjective } from './fill-objective.js';
+export * from './fill.js';
+export { type NotPlaced, type WayIn } from './fill-why.js';
+export { brokenRules, visitBreaks } from './fill-check.js';

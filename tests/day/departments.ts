@@ -25,7 +25,10 @@ export function inventedDepartment(seed: number, size: DepartmentSize): FillProb
   const random = stream('department', seed);
   const whole = (low: number, high: number) => low + Math.floor(random() * (high - low + 1));
   const [open, close] = size.hours ?? [8 * 60, 17 * 60];
-  const days = Array.from({ length: size.days }, (_, d) => `2027-03-${String(d + 1).padStart(2, '0')}`);
+  const days = Array.from(
+    { length: size.days },
+    (_, d) => `2027-03-${String(d + 1).padStart(2, '0')}`,
+  );
   const scanners = Array.from({ length: size.scanners }, (_, s): Scanner => {
     const breakAt = open + 5 * Math.round((close - open) / 10 + whole(-6, 6));
     return {
