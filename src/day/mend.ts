@@ -1,0 +1,269 @@
+import { clock } from './conflicts.js';
+import { startIn } from './fill-free.js';
+import { dateRefusal, priorityWorth, stepMin } from './fill-problem.js';
+import { freeGaps } from './gaps.js';
+import { MendGrid } from './mend-grid.js';
+import type { BookedVisit, MendOutcome, MendProblem, Move, Repair } from './mend-problem.js';
+import { offerAt, rearrange, type Mover, type Rearranged } from './mend-search.js';
+import type { Booking } from './scanners.js';
+
+export interface MendOptions {
+  readonly nodeBudget?: number;
+}
+
+interface Moment {
+  readonly date: string;
+  readonly minute: number;
+}
+
+const before = (a: Moment, b: Moment) =>
+  a.date < b.date || (a.date === b.date && a.minute < b.minute);
+const startOf = (b: Booking): Moment => ({ date: b.date, minute: b.startMin });
+const later = (a: Moment, b: Moment): Moment => (before(a, b) ? b : a);
+
+/** Whether somebody is on the way in, or has come already, and must not be moved. */
+export function onTheWayIn(problem: MendProblem, visit: BookedVisit): boolean {
+  return (
+    before(startOf(visit), problem.movableFrom) || problem.onTheWay?.has(visit.requestId) === true
+  );
+}
+
+/**
+ * The least disturbing repairs after an event: fewest without a place, fewest moved, least shift; nobody on the way in is
+ * moved. A second proposal, with shorter slots at the cost of answers, stands beside the first where it disturbs fewer.
+ * Nothing is applied.
+ */
+export function mend(problem: MendProblem, options: MendOptions = {}): MendOutcome {
+  if (problem.event.kind === 'no-show') return noShow(problem, problem.event.requestId);
+  const kept = repair(problem, false, options.nodeBudget ?? 4000);
+  if (kept.peopleMoved === 0 && kept.withoutPlace.length === 0) return { proposals: [kept] };
+  const shorter = repair(problem, true, options.nodeBudget ?? 4000);
+  const disturbsFewer =
+    shorter.withoutPlace.length < kept.withoutPlace.length ||
+    (shorter.withoutPlace.length === kept.withoutPlace.length &&
+      shorter.peopleMoved < kept.peopleMoved);
+  return { proposals: disturbsFewer ? [kept, shorter] : [kept] };
+}
+
+function repair(problem: MendProblem, shorterSlots: boolean, nodeBudget: number): Repair {
+  const { department, event, visits } = problem;
+  const grid = new MendGrid(department);
+  const movers: Mover[] = visits.map((visit) => ({
+    request: visit.request,
+    home: visit,
+    aim: startOf(visit),
+    earliest: later(problem.movableFrom, problem.now),
+    sameDay: false,
+  }));
+  const displaced: number[] = [];
+  const stuck: { requestId: string; why: string }[] = [];
+  const waitOnSite: { requestId: string; from: Booking; to: Booking }[] = [];
+  const fixed = visits.map((visit) => onTheWayIn(problem, visit));
+  const place = visits.map((visit): Booking => bare(visit));
+
+  if (event.kind === 'scanner down' || event.kind === 'staff gone') {
+    grid.close(event.scannerId, event.date, event.fromMin, event.toMin);
+  } else if (event.kind === 'team gone') {
+    grid.closeTeam(event.team, event.date, event.fromMin, event.toMin);
+  } else if (event.kind === 'overrun') {
+    const v = visits.findIndex((visit) => visit.requestId === event.requestId);
+    if (v >= 0) {
+      fixed[v] = true;
+      place[v] = { ...place[v]!, slotMin: place[v]!.slotMin + event.minutes };
+    }
+  } else if (event.kind === 'late') {
+    const v = visits.findIndex((visit) => visit.requestId === event.requestId);
+    if (v >= 0) {
+      const from: Moment = { date: visits[v]!.date, minute: visits[v]!.startMin + event.minutes };
+      fixed[v] = false;
+      movers[v] = { ...movers[v]!, earliest: later(from, problem.now), sameDay: true };
+      displaced.push(v);
+    }
+  } else if (event.kind === 'emergency') {
+    const { now } = problem;
+    movers.push({
+      request: event.request,
+      aim: now,
+      earliest: now,
+      sameDay: event.request.priority === 'stat' && event.request.dueDate === undefined,
+    });
+    displaced.push(movers.length - 1);
+  }
+
+  // Those on their way in keep their places, in order; behind an overrun they begin later.
+  const order = visits
+    .map((_, v) => v)
+    .filter((v) => fixed[v])
+    .sort((a, b) => place[a]!.startMin - place[b]!.startMin);
+  for (const v of order) {
+    const visit = visits[v]!;
+    const subject = event.kind === 'overrun' && visit.requestId === event.requestId;
+    if (subject) {
+      grid.close(visit.scannerId, visit.date, visit.startMin, visit.startMin + place[v]!.slotMin);
+      if (visit.team !== undefined)
+        grid.closeTeam(visit.team, visit.date, visit.startMin, visit.startMin + place[v]!.slotMin);
+      continue;
+    }
+    const delayed = firstFree(grid, place[v]!, visit.team);
+    const down = event.kind !== 'overrun' && delayed?.startMin !== visit.startMin;
+    if (delayed === undefined || down) {
+      stuck.push({
+        requestId: visit.requestId,
+        why: `on the way in for ${at(visit)}, and cannot be served there then: speak with them on arrival`,
+      });
+      continue;
+    }
+    if (delayed.startMin !== visit.startMin)
+      waitOnSite.push({ requestId: visit.requestId, from: bare(visit), to: delayed });
+    grid.close(
+      delayed.scannerId,
+      delayed.date,
+      delayed.startMin,
+      delayed.startMin + delayed.slotMin,
+    );
+    if (visit.team !== undefined)
+      grid.closeTeam(
+        visit.team,
+        delayed.date,
+        delayed.startMin,
+        delayed.startMin + delayed.slotMin,
+      );
+  }
+  // Everybody else stands where they stood, unless something closed is in the way now.
+  visits.forEach((visit, v) => {
+    if (fixed[v] === true || displaced.includes(v)) return;
+    if (grid.inTheWay(visit, visit.team, 99) === undefined) displaced.push(v);
+    else grid.mark(visit, visit.team, v);
+  });
+
+  const arranged = rearrange(department, movers, displaced, grid, shorterSlots, nodeBudget);
+  return described(problem, movers, arranged, { stuck, waitOnSite, shorterSlots });
+}
+
+/** The first start from the own one on at which the own scanner has room among what is closed. */
+function firstFree(grid: MendGrid, own: Booking, team: string | undefined): Booking | undefined {
+  for (let startMin = own.startMin; startMin + own.slotMin <= 24 * 60; startMin += stepMin) {
+    const to = { ...own, startMin };
+    if (grid.inTheWay(to, team, 99) !== undefined) return to;
+  }
+  return undefined;
+}
+
+function described(
+  problem: MendProblem,
+  movers: readonly Mover[],
+  { replaced, dropped, fewest }: Rearranged,
+  rest: Pick<Repair, 'stuck' | 'waitOnSite' | 'shorterSlots'>,
+): Repair {
+  const moves = replaced.map(({ mover: m, to, shiftMin, pushedBy }): Move => {
+    const { request, home } = movers[m]!;
+    const was = home === undefined ? undefined : offerAt(request, home);
+    const is = offerAt(request, to);
+    const diagnosticChange = (is?.diagnostic ?? 0) - (was?.diagnostic ?? 0);
+    const same =
+      was?.diagnostic === is?.diagnostic &&
+      was?.targeted === is?.targeted &&
+      was?.screening === is?.screening;
+    return {
+      requestId: request.id,
+      ...(home === undefined ? {} : { from: bare(home) }),
+      to,
+      shiftMin,
+      diagnosticChange,
+      answers:
+        is === undefined
+          ? 'same slot on the same scanner'
+          : home === undefined
+            ? `gets: ${is.words}`
+            : same
+              ? 'same answers'
+              : `${diagnosticChange < 0 ? 'loses' : diagnosticChange > 0 ? 'gains' : 'changes'}: ${is.words}${was === undefined ? '' : ` (was: ${was.words})`}`,
+      because:
+        pushedBy === undefined
+          ? causeWords(problem)
+          : `its place is needed for ${movers[pushedBy]!.request.id}`,
+    };
+  });
+  const booked = moves.filter((m) => m.from !== undefined && !samePlace(m.from, m.to));
+  return {
+    ...rest,
+    moves: moves.filter((m) => m.from === undefined || !sameBooking(m.from, m.to)),
+    withoutPlace: dropped.map((m) => ({
+      requestId: movers[m]!.request.id,
+      why: `no place on the planned days that suits the patient, the scanner and those on their way in (${causeWords(problem)})`,
+    })),
+    peopleMoved: booked.length + dropped.filter((m) => movers[m]!.home !== undefined).length,
+    shiftMin: moves.reduce((sum, m) => sum + m.shiftMin, 0),
+    fewest,
+  };
+}
+
+function causeWords({ event }: MendProblem): string {
+  switch (event.kind) {
+    case 'scanner down':
+    case 'staff gone':
+      return `${event.scannerId} ${event.kind === 'scanner down' ? 'is down' : 'has no staff'} ${clock(event.fromMin)} to ${clock(event.toMin)}`;
+    case 'team gone':
+      return `${event.team} is away ${clock(event.fromMin)} to ${clock(event.toMin)}`;
+    case 'late':
+      return `${event.requestId} is ${event.minutes} min late`;
+    case 'overrun':
+      return `${event.requestId} runs over by ${event.minutes} min`;
+    case 'emergency':
+      return `${event.request.id} is ${event.request.priority}`;
+    case 'no-show':
+      return `${event.requestId} did not come`;
+  }
+}
+
+/** A place that falls free moves nobody; those waiting who could come are named, most pressing first. */
+function noShow(problem: MendProblem, requestId: string): MendOutcome {
+  const nothing: Repair = {
+    moves: [],
+    withoutPlace: [],
+    waitOnSite: [],
+    stuck: [],
+    peopleMoved: 0,
+    shiftMin: 0,
+    fewest: true,
+    shorterSlots: false,
+  };
+  const gone = problem.visits.find((v) => v.requestId === requestId);
+  const scanner = problem.department.scanners.find((s) => s.id === gone?.scannerId);
+  if (gone === undefined || scanner === undefined) return { proposals: [nothing] };
+  const others = problem.visits.filter(
+    (v) => v !== gone && v.scannerId === gone.scannerId && v.date === gone.date,
+  );
+  const called = later(problem.movableFrom, problem.now);
+  const gap = freeGaps(scanner, others)
+    .map((g) => ({
+      ...g,
+      fromMin: called.date === gone.date ? Math.max(g.fromMin, called.minute) : g.fromMin,
+    }))
+    .find((g) => g.fromMin < gone.startMin + gone.slotMin && gone.startMin < g.toMin);
+  const couldCome =
+    gap === undefined || called.date > gone.date
+      ? []
+      : (problem.waiting ?? [])
+          .filter((request) => dateRefusal(request, gone.date) === undefined)
+          .filter((request) =>
+            (request.offers.get(scanner.id) ?? []).some(
+              (o) => startIn(gap, request, o.slotMin) !== undefined,
+            ),
+          )
+          .sort((a, b) => priorityWorth[b.priority] - priorityWorth[a.priority])
+          .map((request) => request.id);
+  return { proposals: [nothing], freed: { place: bare(gone), couldCome } };
+}
+
+const bare = ({ requestId, scannerId, date, startMin, slotMin }: Booking): Booking => ({
+  requestId,
+  scannerId,
+  date,
+  startMin,
+  slotMin,
+});
+const samePlace = (a: Booking, b: Booking) =>
+  a.scannerId === b.scannerId && a.date === b.date && a.startMin === b.startMin;
+const sameBooking = (a: Booking, b: Booking) => samePlace(a, b) && a.slotMin === b.slotMin;
+const at = (b: Booking) => `${b.scannerId}, ${b.date} ${clock(b.startMin)}`;
