@@ -83,7 +83,9 @@ function becauseOf(
   chosen: ReadonlyMap<string, Candidate>,
   low: boolean,
 ): string {
-  const missing = question.needs.find((need) => !chosen.has(need.view));
+  const absent = question.needs.filter((need) => !chosen.has(need.view));
+  // What can never be run explains more than what only has no room.
+  const missing = absent.find((need) => neverRuns(prepared, need.view)) ?? absent[0];
   if (missing !== undefined) return whyNotRun(prepared, missing.view, choices);
   if (!low)
     return `Carried by ${question.needs.map((n) => chosen.get(n.view)?.sequence.name).join('; ')}.`;
@@ -102,6 +104,9 @@ function becauseOf(
     deciding[0];
   return telling?.sentence ?? 'Nothing that is run can show it.';
 }
+
+const neverRuns = (prepared: Prepared, viewId: string) =>
+  prepared.cast.views.some(({ view, candidates }) => view.id === viewId && candidates.length === 0);
 
 /** Why a view is not run: nothing can serve it, or the slot or the patient's stay has no room. */
 export function whyNotRun(

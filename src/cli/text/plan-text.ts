@@ -49,6 +49,7 @@ export function planBrief(plan: Plan, heading: PlanHeading): string {
     ...headingLines(plan, heading),
     ...plan.answers.map((a) => answerText(a, false)),
     ...(order === '' ? [] : [wrapped(`Order: ${order}.`, '   ', '   ')]),
+    ...plan.signedEntries.map((e) => wrapped(`Signed entry: ${e}.`, '   ', '     ')),
     ...plan.cautions
       .filter((c) => /undecided|not done yet|not approved/.test(c))
       .map((c) => wrapped(`! ${c}`, '   ', '     ')),
