@@ -50,6 +50,8 @@ export interface FillOptions {
   /** Nodes the exact method may spend; 0 leaves it out. */
   readonly exactNodes?: number;
   readonly reportEvery?: number;
+  /** Rounds of price improvement per tier of the bound; fewer give a looser bound, still a true one. */
+  readonly boundRounds?: number;
 }
 
 /** Most requests the exact method is asked about. */
@@ -63,7 +65,13 @@ export function* fill(
   problem: FillProblem,
   options: FillOptions,
 ): Generator<FillProgress, FillProposal> {
-  const { random, iterations = 2000, exactNodes = 100_000, reportEvery = 50 } = options;
+  const {
+    random,
+    iterations = 2000,
+    exactNodes = 100_000,
+    reportEvery = 50,
+    boundRounds = 400,
+  } = options;
   const ground = layOut(problem);
   const search = searchFill(ground, { iterations, random, reportEvery });
   let bound: FillBound | undefined;
@@ -71,7 +79,7 @@ export function* fill(
   while (step.done !== true) {
     const { iteration, of, best, objective } = step.value;
     // The bound wants a good answer to aim at: first guess at the start, again at the end.
-    bound ??= boundOf(ground, objective);
+    bound ??= boundOf(ground, objective, boundRounds);
     const standing = bound;
     yield {
       iteration,
@@ -83,7 +91,7 @@ export function* fill(
     step = search.next();
   }
   const { best, objective } = step.value;
-  bound = tighter(bound, boundOf(ground, objective));
+  bound = tighter(bound, boundOf(ground, objective, boundRounds));
   const exact =
     problem.waiting.length <= exactUpTo && exactNodes > 0
       ? fillExactly(ground, best, exactNodes)
@@ -123,11 +131,11 @@ export function fillAll(problem: FillProblem, options: FillOptions): FillProposa
   return step.value;
 }
 
-function boundOf(ground: Ground, o: FillObjective): FillBound {
+function boundOf(ground: Ground, o: FillObjective, rounds: number): FillBound {
   return {
-    diagnostic: upperBound(ground, 'diagnostic', o.diagnostic).bound,
-    targeted: upperBound(ground, 'targeted', o.targeted).bound,
-    screening: upperBound(ground, 'screening', o.screening).bound,
+    diagnostic: upperBound(ground, 'diagnostic', o.diagnostic, rounds).bound,
+    targeted: upperBound(ground, 'targeted', o.targeted, rounds).bound,
+    screening: upperBound(ground, 'screening', o.screening, rounds).bound,
   };
 }
 

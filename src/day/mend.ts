@@ -85,7 +85,7 @@ function repair(problem: MendProblem, shorterSlots: boolean, nodeBudget: number)
       request: event.request,
       aim: now,
       earliest: now,
-      sameDay: event.request.priority === 'stat' && event.request.dueDate === undefined,
+      sameDay: event.request.priority === 'stat',
     });
     displaced.push(movers.length - 1);
   }
