@@ -75,7 +75,13 @@ function assemble(
   const { request, scanner, exam, profile, cast, fixed } = prepared;
   const { policy } = ground.library;
   const chosen = [...chosenByView(prepared, choice).values()];
-  const order = runningOrder(cast, chosen, profile.stay, fixed.localiserS, policy);
+  const order = runningOrder({
+    cast,
+    chosen,
+    stay: profile.stay,
+    startS: fixed.localiserS,
+    policy,
+  });
   const visit = secondVisit(prepared, choice);
   const lifts = liftFinder(prepared, choice, choices, ground, otherScanners, visit?.ranks);
   const answers = explainAnswers(prepared, choice, choices, lifts);
@@ -132,7 +138,8 @@ function planStep(step: OrderedStep, prepared: Prepared, ground: PlanningGround)
   };
 }
 
-function stillnessWords({ time }: Candidate): string {
+/** What must be kept still or held, in words. */
+export function stillnessWords({ time }: Candidate): string {
   const { kind, count, lengthS } = time.intervals;
   const length = lengthS < 10 ? Number(lengthS.toFixed(1)) : Math.round(lengthS);
   switch (kind) {

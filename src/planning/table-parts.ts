@@ -35,6 +35,12 @@ export function fixedTime(
   };
 }
 
+/** Time left to spend whatever is chosen when the patient is on the table already: getting out. */
+export function exitTime(policy: SitePolicy): FixedTime {
+  const { meanS, cv } = policy.time.exit.value;
+  return { table: lognormal(meanS, cv), localiserS: 0, entryMeanS: 0, exitMeanS: meanS };
+}
+
 /** Nominal scanner time of a candidate without repeats, whole seconds, the pause after it included. */
 export function nominalS(candidate: Candidate, policy: SitePolicy): number {
   return Math.ceil(candidate.time.acquisitionS + policy.time.idleBetweenS.value - 1e-9);
