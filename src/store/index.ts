@@ -2,6 +2,7 @@ export { openStore, type Store, type StoreSettings } from './store.js';
 export type { StoredBooking, StoredOwed, StoredRequest } from './stored.js';
 export type { Holder, PlacingOutcome, Refused, Stale, Taken } from './outcomes.js';
 export type { AddOutcome, RequestOutcome, RequestPatch } from './requests.js';
+export { happeningSchema, type Tap, type TapOutcome } from './console-log.js';
 export type { Move, NewBooking } from './bookings.js';
 export type { OwedOutcome } from './owed.js';
 export type { DoneAnswer, DoneExam, DoneOutcome } from './record-done.js';

@@ -1,6 +1,7 @@
 import { ProblemError } from '../shared/index.js';
 import { backUp, type BackupOutcome } from './backup.js';
 import { bookingsIn, type Bookings } from './bookings.js';
+import { consoleLogIn, type ConsoleLog } from './console-log.js';
 import type { Database } from './database.js';
 import { historyIn, type History } from './history.js';
 import { owedIn, type Owed } from './owed.js';
@@ -23,6 +24,7 @@ export interface Store {
   readonly bookings: Bookings;
   readonly owed: Owed;
   readonly history: History;
+  readonly consoleLog: ConsoleLog;
   readonly seed: (seed: Seed, who: string, atMs: number) => Promise<Seeded>;
   readonly backup: (path: string) => Promise<BackupOutcome>;
   /**
@@ -56,6 +58,7 @@ export function storeOn(database: Database): Store {
     bookings: bookingsIn(database),
     owed: owedIn(database),
     history: historyIn(database),
+    consoleLog: consoleLogIn(database),
     seed: (seed, who, atMs) => seedInto(database, seed, who, atMs),
     backup: (path) => backUp(database, path),
     onChange: database.listeners.listen,

@@ -16,6 +16,7 @@ export interface Tables {
   change: ChangeRow;
   owed: OwedRow;
   done_answer: DoneAnswerRow;
+  console_tap: ConsoleTapRow;
   schema_step: { number: number; name: string };
 }
 
@@ -80,6 +81,17 @@ export interface OwedRow {
   signed_by: string | null;
   signed_reason: string | null;
   version: number;
+}
+
+export interface ConsoleTapRow {
+  booking_id: string;
+  seq: number;
+  tap_id: string;
+  at_s: number;
+  at_ms: number;
+  who: string;
+  /** JSON of what was tapped. */
+  body: string;
 }
 
 export interface DoneAnswerRow {

@@ -2,13 +2,17 @@ import { sql } from 'kysely';
 import { ProblemError } from '../../shared/index.js';
 import type { Database, DatabaseKind } from '../database.js';
 import { retried } from '../retried.js';
+import { consoleTables } from './console-tables.js';
 import { firstTables } from './first-tables.js';
 
 /** Forward only: a step that has been given out is never changed, only followed by another. */
 const steps: readonly {
   readonly name: string;
   readonly statements: (kind: DatabaseKind) => readonly string[];
-}[] = [{ name: 'first tables', statements: firstTables }];
+}[] = [
+  { name: 'first tables', statements: firstTables },
+  { name: 'console log', statements: consoleTables },
+];
 
 /** Brings the tables to what this program expects: all missing steps or none, whoever else starts now. */
 export async function migrate(database: Database): Promise<void> {
