@@ -59,6 +59,18 @@ export function consoleLogIn(database: Database) {
   return {
     list,
 
+    /** Zero of the exam's clock by the first tap, epoch ms; undefined before there is one. */
+    zeroMs: (bookingId: string): Promise<number | undefined> =>
+      looking(database, async (db) => {
+        const row = await db
+          .selectFrom('console_tap')
+          .select(['at_s', 'at_ms'])
+          .where('booking_id', '=', bookingId)
+          .orderBy('seq')
+          .executeTakeFirst();
+        return row === undefined ? undefined : row.at_ms - row.at_s * 1000;
+      }),
+
     /** Adds taps in the order given; a tap whose id is there already is passed over. Answers with the whole log. */
     append: (
       bookingId: string,

@@ -8,6 +8,7 @@ import { pageLocals } from './page.js';
 import { Planner } from './planner.js';
 import { boardRoutes } from './routes/board.js';
 import { bookingRoutes } from './routes/bookings.js';
+import { consoleRoutes } from './routes/console.js';
 import { libraryRoutes } from './routes/library.js';
 import { liveRoutes } from './routes/live.js';
 import { methodsRoutes } from './routes/methods.js';
@@ -52,6 +53,7 @@ export function createApp(given: WebDeps): Express {
   );
   app.use(pageLocals(deps));
   app.use(sameOriginOnly);
+  app.use(express.json({ limit: '64kb' }));
   app.use(express.urlencoded({ extended: false, limit: '64kb' }));
   app.use(whoRoutes());
   app.use(boardRoutes(deps));
@@ -61,6 +63,7 @@ export function createApp(given: WebDeps): Express {
   app.use(requestEditRoutes(deps));
   app.use(planSheetRoutes(deps));
   app.use(owedRoutes(deps));
+  app.use(consoleRoutes(deps));
   app.use(libraryRoutes(deps));
   app.use(policyRoutes(deps));
   app.use(methodsRoutes(deps));

@@ -15,6 +15,16 @@ export function dayFrom(date: string, days: number): string {
   return DateTime.fromISO(date, { zone: 'utc' }).plus({ days }).toFormat('yyyy-MM-dd');
 }
 
+/** Instant of a place on the site's clock, epoch ms; in an hour that a clock change doubles, the first one. */
+export function instantOf(date: string, startMin: number, zone: string): number {
+  const [year, month, day] = date.split('-').map(Number);
+  const hour = Math.floor(startMin / 60);
+  return DateTime.fromObject(
+    { year: year!, month: month!, day: day!, hour, minute: startMin % 60 },
+    { zone },
+  ).toMillis();
+}
+
 /** Whether a text is a day of the calendar, as year-month-day. */
 export function isDay(text: string): boolean {
   return /^\d{4}-\d{2}-\d{2}$/.test(text) && DateTime.fromISO(text, { zone: 'utc' }).isValid;

@@ -32,6 +32,7 @@ const pages = [
   '/library/sequences/head-ax-t2-ss-half?field=3',
   '/policy',
   '/methods',
+  '/console/R-102.1',
   '/no-such-page',
 ];
 

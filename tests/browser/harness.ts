@@ -30,11 +30,11 @@ export interface Site {
 
 /** The whole application over a database in memory, filled with the demo department, on a free port of this machine. */
 export async function openSite(
-  options: { readonly file?: string; readonly seed?: boolean } = {},
+  options: { readonly file?: string; readonly seed?: boolean; readonly port?: number } = {},
 ): Promise<Site> {
   const client = mkdtempSync(join(tmpdir(), 'stillspan-client-'));
   await build({
-    entryPoints: ['board', 'intake'].map((name) =>
+    entryPoints: ['board', 'intake', 'console'].map((name) =>
       join(projectFolder, `src/web/client/${name}.ts`),
     ),
     bundle: true,
@@ -68,7 +68,7 @@ export async function openSite(
     },
     log: (line, detail) => process.stderr.write(`${line} ${JSON.stringify(detail)}\n`),
   });
-  const server = app.listen(0, '127.0.0.1');
+  const server = app.listen(options.port ?? 0, '127.0.0.1');
   await new Promise((resolve) => server.once('listening', resolve));
   return {
     url: `http://127.0.0.1:${(server.address() as AddressInfo).port}`,

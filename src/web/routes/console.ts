@@ -1,0 +1,159 @@
+import { randomUUID } from 'node:crypto';
+import { Router, type Request } from 'express';
+import { z } from 'zod';
+import type { ConsoleExam, ConsoleHappening } from '../../console/index.js';
+import { parseDurationS } from '../../interchange/index.js';
+import { examOf } from '../../planning/index.js';
+import { ProblemError } from '../../shared/index.js';
+import { happeningSchema, type StoredBooking, type Tap } from '../../store/index.js';
+import { gone } from '../board-fields.js';
+import type { PageDeps } from '../deps.js';
+import { instantOf } from '../site-time.js';
+import { consolePage } from '../view-models/console-page.js';
+import { whoIs } from '../who.js';
+
+/** Exams further than this from their slot (the demo's, say) run by the clock of their first tap, ms. */
+const farMs = 12 * 3_600_000;
+
+const tapsBody = z.strictObject({
+  taps: z
+    .array(
+      z.strictObject({
+        tapId: z.string().min(8).max(64),
+        atS: z.number().min(-86_400).max(172_800),
+        happening: happeningSchema,
+      }),
+    )
+    .max(200),
+});
+
+/** The technologist's page: one tap an event, the rest of the exam planned anew after each. */
+export function consoleRoutes(deps: PageDeps): Router {
+  const router = Router();
+
+  async function opened(id: string) {
+    const booking = await deps.store.bookings.get(id);
+    const stored =
+      booking === undefined ? undefined : await deps.store.requests.get(booking.requestId);
+    const scanner = deps.department.scanners.find((s) => s.id === booking?.scannerId);
+    if (booking === undefined || stored === undefined || scanner === undefined)
+      throw gone('booking', id);
+    const found = examOf(stored.body, deps.ground.library);
+    if (found.kind === 'refused') throw new ProblemError(found.problems[0]!);
+    const exam: ConsoleExam = {
+      request: stored.body,
+      ...found.value,
+      scanner,
+      ground: deps.ground,
+    };
+    return { booking, exam, zeroMs: await zeroOf(booking) };
+  }
+
+  /** Zero of the exam's clock: the slot's start, or the first tap where the slot is another day's. */
+  async function zeroOf(booking: StoredBooking): Promise<number> {
+    const slotMs = instantOf(booking.date, booking.startMin, deps.department.zone);
+    if (Math.abs(deps.now() - slotMs) < farMs) return slotMs;
+    return (await deps.store.consoleLog.zeroMs(booking.id)) ?? deps.now();
+  }
+
+  async function shown(id: string) {
+    const { booking, exam, zeroMs } = await opened(id);
+    const events = await deps.store.consoleLog.list(id);
+    const slotS = booking.slotMin * 60;
+    const page = consolePage(exam, events, slotS, (deps.now() - zeroMs) / 1000);
+    return {
+      booking,
+      exam: exam.exam,
+      request: exam.request,
+      scanner: exam.scanner,
+      zeroMs,
+      slotS,
+      page,
+      over: booking.status === 'fulfilled',
+    };
+  }
+
+  router.get('/console/:id', async (request, response) => {
+    const data = await shown(String(request.params.id));
+    response.render('console', {
+      title: `${data.request.id} at the scanner`,
+      dim: true,
+      nowMs: deps.now(),
+      ...data,
+    });
+  });
+
+  /** Taps from the page's own script: kept once each, however often sent; answers with the page's changing part. */
+  router.post('/console/:id/taps', async (request, response) => {
+    const id = String(request.params.id);
+    const body = tapsBody.safeParse(request.body);
+    if (!body.success) {
+      throw new ProblemError({
+        code: 'taps',
+        thing: 'taps',
+        value: 'not readable',
+        limit: 'taps as this page sends them',
+        wayOut: 'Reload the page.',
+      });
+    }
+    await keep(id, body.data.taps as readonly Tap[], request);
+    response.set('Cache-Control', 'no-store').render('parts/console-now', await shown(id));
+  });
+
+  /** One tap as a plain form, for a page whose script does not run. */
+  router.post('/console/:id', async (request, response) => {
+    const id = String(request.params.id);
+    const form = request.body as Record<string, string>;
+    const { zeroMs } = await opened(id);
+    const atS = (deps.now() - zeroMs) / 1000;
+    const tapId = /^[\w-]{8,64}$/.test(form['tap_id'] ?? '') ? form['tap_id']! : randomUUID();
+    await keep(id, [{ tapId, atS, happening: readHappening(form) }], request);
+    response.redirect(303, `/console/${encodeURIComponent(id)}`);
+  });
+
+  async function keep(id: string, taps: readonly Tap[], request: Request) {
+    const outcome = await deps.store.consoleLog.append(id, taps, whoIs(request), deps.now());
+    if (outcome.kind === 'kept') return;
+    throw new ProblemError({
+      code: 'tap-refused',
+      thing: 'this tap',
+      value: outcome.why,
+      limit: 'only a booked exam that is not over takes taps',
+      wayOut: 'Open the day board.',
+    });
+  }
+
+  return router;
+}
+
+/** A tap from form fields; spans are written as "30 s" or "2 min". */
+function readHappening(form: Readonly<Record<string, string>>): ConsoleHappening {
+  const { kind } = form;
+  const span = (field: string) => {
+    const text = form[field];
+    if (text === undefined || text === '') return {};
+    const seconds = text === 'none' ? 0 : parseDurationS(text);
+    return seconds === undefined ? {} : { [field]: { kind: 'stated', seconds } };
+  };
+  const candidate =
+    kind === 'started'
+      ? { kind, viewId: form['view'], sequenceId: form['sequence'] }
+      : kind === 'put first' || kind === 'dropped'
+        ? { kind, viewId: form['view'] }
+        : kind === 'hold failed'
+          ? { kind, afterS: Number(form['after']) }
+          : kind === 'undone'
+            ? { kind, taken: Number(form['taken']) }
+            : kind === 'statement'
+              ? { kind, ...span('still'), ...span('hold'), ...span('stay') }
+              : { kind };
+  const read = happeningSchema.safeParse(candidate);
+  if (read.success) return read.data as ConsoleHappening;
+  throw new ProblemError({
+    code: 'tap',
+    thing: 'this tap',
+    value: `"${kind ?? ''}"`,
+    limit: 'a tap this page offers',
+    wayOut: 'Reload the page.',
+  });
+}
