@@ -1,4 +1,4 @@
-import { besselJ1 } from './bessel.js';
+import { besselJ1Over } from './bessel.js';
 
 /** Stands for bone and air: no signal in any sequence, no entry in the tissue tables. */
 export const noSignal = 'no signal';
@@ -73,7 +73,7 @@ export function addEllipse(region: Region, amplitude: number, row: SpectrumRow):
   const { xMm, yMm, halfXMm, halfYMm, turnDeg } = region;
   const [stepU, stepV] = turned(row.stepX, row.stepY, -turnDeg);
   const [startU, startV] = turned(row.kx, row.ky, -turnDeg);
-  const area = amplitude * halfXMm * halfYMm;
+  const area = amplitude * 2 * Math.PI * halfXMm * halfYMm;
   const start = -2 * Math.PI * (row.kx * xMm + row.ky * yMm);
   const step = -2 * Math.PI * (row.stepX * xMm + row.stepY * yMm);
   const turnCos = Math.cos(step);
@@ -83,8 +83,7 @@ export function addEllipse(region: Region, amplitude: number, row: SpectrumRow):
   for (let n = 0; n < row.real.length; n++) {
     const u = halfXMm * (startU + n * stepU);
     const v = halfYMm * (startV + n * stepV);
-    const q = Math.sqrt(u * u + v * v);
-    const value = area * (q < 1e-9 ? Math.PI : besselJ1(2 * Math.PI * q) / q);
+    const value = area * besselJ1Over(2 * Math.PI * Math.sqrt(u * u + v * v));
     row.real[n] = row.real[n]! + value * c;
     row.imaginary[n] = row.imaginary[n]! + value * s;
     const next = c * turnCos - s * turnSin;

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { besselJ1 } from '../../src/physics/bessel.js';
+import { besselJ1, besselJ1Over } from '../../src/physics/bessel.js';
 
 /** Bessel's integral, mean of cos(theta - x sin theta) over a period: the trapezium rule is exact for it in practice. */
 function byIntegral(x: number): number {
@@ -22,5 +22,12 @@ describe('the Bessel function J1', () => {
     // From memory, any table of Bessel zeros.
     expect(Math.abs(besselJ1(3.83170597))).toBeLessThan(1e-7);
     expect(Math.abs(besselJ1(7.01558667))).toBeLessThan(1e-7);
+  });
+  it('over its argument comes out of the table as out of the integral, between the steps and beyond the end', () => {
+    for (let x = 0.0007; x < 900; x += x < 12 ? 0.0313 : 3.71) {
+      expect(Math.abs(besselJ1Over(x) - byIntegral(x) / x), String(x)).toBeLessThan(1e-7);
+    }
+    // Limit at 0 by the series x/2 - x^3/16 + ... (from memory).
+    expect(besselJ1Over(0)).toBe(0.5);
   });
 });
