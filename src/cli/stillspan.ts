@@ -2,6 +2,7 @@
 import { Command, CommanderError } from 'commander';
 import { ProblemError } from '../shared/index.js';
 import { addCurveCommand } from './commands/curve.js';
+import { addFillCommand } from './commands/fill.js';
 import { addLibraryCommand } from './commands/library.js';
 import { addPhysicsCommands } from './commands/physics.js';
 import { addPlanCommand } from './commands/plan.js';
@@ -20,6 +21,7 @@ const program = new Command('stillspan')
 
 addPlanCommand(program);
 addCurveCommand(program);
+addFillCommand(program);
 addSequenceCommand(program);
 addLibraryCommand(program);
 addPhysicsCommands(program);

@@ -28,6 +28,9 @@ export interface NotPlaced {
 const at = (b: Pick<Booking, 'scannerId' | 'date' | 'startMin'>) =>
   `${b.scannerId}, ${b.date} ${clock(b.startMin)}`;
 
+/** Never rounded up to certainty. */
+const chanceWords = (p: number) => (p > 0.995 ? '>99 %' : `${Math.round(100 * p)} %`);
+
 /** Why a placement stands where it stands. */
 export function whyHere(
   problem: FillProblem,
@@ -37,7 +40,7 @@ export function whyHere(
   const request = problem.waiting.find((r) => r.id === own.requestId);
   if (request === undefined) return [];
   const why: string[] = [
-    `${own.slotMin} min here: ${own.offer.words} (${Math.round(100 * own.offer.chance)} % chance to end inside).`,
+    `${own.slotMin} min here: ${own.offer.words} (${chanceWords(own.offer.chance)} chance to end inside).`,
   ];
   let more: { readonly scannerId: string; readonly offer: Offer } | undefined;
   for (const [scannerId, offers] of request.offers)

@@ -15,3 +15,4 @@ export { type NotPlaced, type WayIn } from './fill-why.js';
 export { brokenRules, visitBreaks } from './fill-check.js';
 export * from './mend-problem.js';
 export { mend, onTheWayIn, type MendOptions } from './mend.js';
+export { repeatableStream } from './repeatable-stream.js';

@@ -10,8 +10,8 @@ const stepsADay = (24 * 60) / stepMin;
  * (hours, breaks, what is down, people on their way in).
  */
 export class MendGrid {
-  private readonly cells = new Map<string, Int16Array>();
-  private readonly teams = new Map<string, Int16Array>();
+  private readonly cells = new Map<string, Map<string, Int16Array>>();
+  private readonly teams = new Map<string, Map<string, Int16Array>>();
 
   constructor(department: Department) {
     for (const date of department.days)
@@ -21,20 +21,22 @@ export class MendGrid {
           row.fill(free, Math.ceil(h.fromMin / stepMin), Math.floor(h.toMin / stepMin));
         for (const b of scanner.breaks)
           row.fill(closed, Math.floor(b.fromMin / stepMin), Math.ceil(b.toMin / stepMin));
-        this.cells.set(`${scanner.id} ${date}`, row);
+        const days = this.cells.get(scanner.id) ?? new Map<string, Int16Array>();
+        this.cells.set(scanner.id, days.set(date, row));
       }
   }
 
   private team(team: string, date: string): Int16Array {
-    const key = `${team} ${date}`;
-    let row = this.teams.get(key);
-    if (row === undefined) this.teams.set(key, (row = new Int16Array(stepsADay)));
+    const days = this.teams.get(team) ?? new Map<string, Int16Array>();
+    const row = days.get(date) ?? new Int16Array(stepsADay);
+    this.teams.set(team, days.set(date, row));
     return row;
   }
 
   close(scannerId: string, date: string, fromMin: number, toMin: number): void {
     this.cells
-      .get(`${scannerId} ${date}`)
+      .get(scannerId)
+      ?.get(date)
       ?.fill(closed, Math.floor(fromMin / stepMin), Math.ceil(toMin / stepMin));
   }
 
@@ -46,7 +48,7 @@ export class MendGrid {
   mark(place: Booking, team: string | undefined, visit: number): void {
     const from = Math.floor(place.startMin / stepMin);
     const to = Math.ceil((place.startMin + place.slotMin) / stepMin);
-    const rows = [this.cells.get(`${place.scannerId} ${place.date}`)];
+    const rows = [this.cells.get(place.scannerId)?.get(place.date)];
     if (team !== undefined) rows.push(this.team(team, place.date));
     for (const row of rows)
       for (let t = from; row !== undefined && t < to; t++)
@@ -58,7 +60,7 @@ export class MendGrid {
     const from = Math.floor(place.startMin / stepMin);
     const to = Math.ceil((place.startMin + place.slotMin) / stepMin);
     const met: number[] = [];
-    const rows = [this.cells.get(`${place.scannerId} ${place.date}`)];
+    const rows = [this.cells.get(place.scannerId)?.get(place.date)];
     if (team !== undefined) rows.push(this.team(team, place.date));
     for (const row of rows) {
       if (row === undefined || to > stepsADay) return undefined;

@@ -36,7 +36,7 @@ export function onTheWayIn(problem: MendProblem, visit: BookedVisit): boolean {
 export function mend(problem: MendProblem, options: MendOptions = {}): MendOutcome {
   if (problem.event.kind === 'no-show') return noShow(problem, problem.event.requestId);
   const kept = repair(problem, false, options.nodeBudget ?? 4000);
-  if (kept.peopleMoved === 0 && kept.withoutPlace.length === 0) return { proposals: [kept] };
+  if (kept.peopleMoved < 2 && kept.withoutPlace.length === 0) return { proposals: [kept] };
   const shorter = repair(problem, true, options.nodeBudget ?? 4000);
   const disturbsFewer =
     shorter.withoutPlace.length < kept.withoutPlace.length ||
