@@ -42,7 +42,11 @@ describe.skipIf(browserPath === undefined)('at the scanner', () => {
     await page.getByRole('heading', { name: /^Running/ }).waitFor();
     await tap(page, 'Moved');
     await page.getByRole('heading', { name: /^Next: .*single-shot/ }).waitFor();
-    await page.getByText(/If it stops now: Ventricular size stays not answered/).waitFor();
+    await page
+      .getByText(
+        /If it stops now\. .*Ventricular size.*: now not answered; going on could make it targeted/,
+      )
+      .waitFor();
     for (let n = 0; n < 2; n++) {
       await tap(page, 'Start');
       await page.getByRole('heading', { name: /^Running: .*single-shot/ }).waitFor();
