@@ -1,6 +1,6 @@
 import { Board, type Seat, type Spot } from './fill-board.js';
 import { compareFills, guideOf, type FillObjective } from './fill-objective.js';
-import { onTimeFactor, priorityWorth, type Ground, type SlotOption } from './fill-problem.js';
+import { priorityWorth, type Ground, type SlotOption } from './fill-problem.js';
 
 export interface SearchProgress {
   readonly iteration: number;
@@ -27,8 +27,9 @@ export function* searchFill(
 ): Generator<SearchProgress, SearchProgress> {
   const board = new Board(ground);
   const count = ground.problem.waiting.length;
-  const scale = meanWorth(ground);
-  recreate(board, random, 0);
+  const tables = tablesOf(ground);
+  const { scale } = tables;
+  recreate(board, tables, random, 0);
   let objective = board.objective();
   let guide = guideOf(objective);
   let best = board.copy();
@@ -41,8 +42,9 @@ export function* searchFill(
     const warmth =
       done < 0.7 ? 0.3 * scale * 200 ** (-done / 0.7) : 1e-4 * 1e-6 ** ((done - 0.7) / 0.3);
     const before = ground.stretches.map((_, s) => board.seatsOf(s));
-    ruin(board, random);
-    recreate(board, random, 0.02);
+    if (random() < 0.5) force(board, tables, random);
+    else ruin(board, random);
+    recreate(board, tables, random, 0.02);
     const next = board.objective();
     const nextGuide = guideOf(next);
     if (nextGuide >= guide + warmth * Math.log(1 - random())) {
@@ -56,7 +58,7 @@ export function* searchFill(
   }
   // Whoever a random blink passed over gets the free place after all.
   const last = best.copy();
-  recreate(last, () => 0.19, 0);
+  recreate(last, tables, () => 0.19, 0);
   const lastObjective = last.objective();
   return compareFills(lastObjective, bestObjective) > 0
     ? { iteration: iterations, of: iterations, best: last, objective: lastObjective }
@@ -91,14 +93,55 @@ function ruin(board: Board, random: () => number): void {
   }
 }
 
+/**
+ * Puts one request that could have more into a stretch with room for more, in place of as few neighbours as it takes;
+ * they are placed again with everybody else.
+ */
+function force(board: Board, tables: Tables, random: () => number): void {
+  const { stretches, lines, problem } = board.ground;
+  const whole = (n: number) => Math.floor(random() * n);
+  const lacks = tables.top.map((top, r) => top - valueNow(board, r));
+  const total = lacks.reduce((a, b) => a + b, 0);
+  for (let tries = 0; tries < 8; tries++) {
+    let request = whole(problem.waiting.length);
+    if (total > 1e-3 && random() < 0.5) {
+      // By what is lacking: a pressing request left out is tried first.
+      let draw = random() * total;
+      request = Math.max(
+        0,
+        lacks.findIndex((lack) => (draw -= lack) < 0),
+      );
+    }
+    if (problem.waiting[request]!.team !== undefined) continue;
+    const from = board.where[request]!;
+    const least = valueNow(board, request);
+    const s = whole(stretches.length);
+    const limits = stretches[s]!;
+    const window = lines[limits.line]!.windows[request];
+    if (window === undefined) continue;
+    const better = window.options.filter(
+      (o) => o.steps <= limits.to - limits.from && spotValue(o, window.factor) > least,
+    );
+    if (better.length === 0) continue;
+    const option = better[whole(better.length)]!;
+    const seats = board.seatsOf(s).filter((x) => x.request !== request);
+    const own: Seat = { request, option, ...window };
+    const first = whole(seats.length + 1);
+    for (let many = 0; first + many <= seats.length; many++) {
+      const kept = [...seats.slice(0, first), own, ...seats.slice(first + many)];
+      if (from >= 0 && from !== s) board.take(request);
+      if (board.replace(s, kept)) return;
+    }
+  }
+}
+
 /** Best insertion of everybody who waits, in a random kind of order, then a look whether a longer slot fits. */
-function recreate(board: Board, random: () => number, blink: number): void {
+function recreate(board: Board, tables: Tables, random: () => number, blink: number): void {
   const { problem } = board.ground;
   const waiting = board.where.flatMap((s, r) => (s < 0 ? [r] : []));
-  const key = orderKey(board.ground, random);
+  const key = orderKey(tables, random);
   waiting.sort((a, b) => key[b]! - key[a]!);
-  const density = meanWorth(board.ground) / 5;
-  const price = random() < 0.2 ? 0 : density * 1.5 * random();
+  const price = random() < 0.2 ? 0 : tables.density * 1.2 * random();
   const alone = random() < 0.5 ? 1e-6 : 1e-4;
   for (const r of waiting) {
     let top: Spot | undefined;
@@ -122,6 +165,12 @@ function recreate(board: Board, random: () => number, blink: number): void {
     if (top !== undefined) board.put(r, top);
   }
   lengthen(board);
+}
+
+function valueNow(board: Board, request: number): number {
+  const stretch = board.where[request]!;
+  const seat = stretch < 0 ? undefined : board.seatsOf(stretch).find((x) => x.request === request);
+  return seat === undefined ? 0 : spotValue(seat.option, seat.factor);
 }
 
 const spotValue = (o: SlotOption, factor: number): number =>
@@ -166,30 +215,53 @@ function lengthen(board: Board): void {
   }
 }
 
-/** By what the requests that wait are taken in turn: worth, worth per step, length, chance. */
-function orderKey(ground: Ground, random: () => number): readonly number[] {
-  const kind = Math.floor(random() * 4);
-  return ground.problem.waiting.map((_, r) => {
-    if (kind === 0) return random();
-    let top = 0;
-    for (const line of ground.lines)
-      for (const o of line.windows[r]?.options ?? []) {
-        const v = line.windows[r]!.factor * (o.diagnostic + 0.01 * o.targeted);
-        top = Math.max(top, kind === 1 ? v : kind === 2 ? v / o.steps : o.steps);
-      }
-    return top * (0.8 + 0.4 * random());
-  });
+/** What is known of each request before the search: the best it could get anywhere, in all and per step, and its length. */
+interface Tables {
+  readonly top: readonly number[];
+  readonly perStep: readonly number[];
+  readonly length: readonly number[];
+  /** Mean of the tops: the scale on which answers differ. */
+  readonly scale: number;
+  /** Worth of a step of scanner time, about. */
+  readonly density: number;
 }
 
-function meanWorth(ground: Ground): number {
-  const { waiting } = ground.problem;
-  if (waiting.length === 0) return 1;
-  const sum = waiting.reduce((total, request) => {
-    const top = Math.max(
-      0,
-      ...[...request.offers.values()].flatMap((offers) => offers.map((o) => o.diagnostic)),
-    );
-    return total + onTimeFactor * priorityWorth[request.priority] * top;
-  }, 0);
-  return Math.max(1e-3, sum / waiting.length);
+function tablesOf(ground: Ground): Tables {
+  const top: number[] = [];
+  const perStep: number[] = [];
+  const length: number[] = [];
+  ground.problem.waiting.forEach((_, r) => {
+    let best = 0;
+    let steps = 1;
+    let ratio = 0;
+    for (const stretch of ground.stretches) {
+      const w = ground.lines[stretch.line]!.windows[r];
+      for (const o of w?.options ?? []) {
+        const v = spotValue(o, w!.factor);
+        if (o.steps > stretch.to - stretch.from) continue;
+        ratio = Math.max(ratio, v / o.steps);
+        if (v > best) {
+          best = v;
+          steps = o.steps;
+        }
+      }
+    }
+    top.push(best);
+    perStep.push(ratio);
+    length.push(steps);
+  });
+  const sum = (list: readonly number[]) => list.reduce((a, b) => a + b, 0);
+  return {
+    ...{ top, perStep, length },
+    scale: Math.max(1e-3, sum(top) / Math.max(1, top.length)),
+    density: sum(top) / Math.max(1, sum(length)),
+  };
+}
+
+/** By what the requests that wait are taken in turn: chance, worth, worth per step, length. */
+function orderKey(tables: Tables, random: () => number): readonly number[] {
+  const kind = Math.floor(random() * 4);
+  if (kind === 0) return tables.top.map(() => random());
+  const list = kind === 1 ? tables.top : kind === 2 ? tables.perStep : tables.length;
+  return list.map((v) => v * (0.8 + 0.4 * random()));
 }
