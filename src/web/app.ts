@@ -13,6 +13,7 @@ import { libraryRoutes } from './routes/library.js';
 import { liveRoutes } from './routes/live.js';
 import { methodsRoutes } from './routes/methods.js';
 import { owedRoutes } from './routes/owed.js';
+import { placesRoutes } from './routes/places.js';
 import { planSheetRoutes } from './routes/plan-sheet.js';
 import { policyRoutes } from './routes/policy.js';
 import { requestEditRoutes } from './routes/request-edit.js';
@@ -62,6 +63,7 @@ export function createApp(given: WebDeps): Express {
   app.use(requestRoutes(deps));
   app.use(requestEditRoutes(deps));
   app.use(planSheetRoutes(deps));
+  app.use(placesRoutes(deps));
   app.use(owedRoutes(deps));
   app.use(consoleRoutes(deps));
   app.use(libraryRoutes(deps));

@@ -26,6 +26,7 @@ const pages = [
   '/requests/new?exam=liver',
   '/requests/R-106',
   '/requests/R-106/edit',
+  '/requests/R-157/places',
   '/owed',
   '/library',
   '/library/exams/brain-general',

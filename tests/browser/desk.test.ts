@@ -91,6 +91,21 @@ describe.skipIf(browserPath === undefined)('the booking desk', () => {
     await Promise.all(pages.map((p) => p.context().close()));
   });
 
+  it('finds the best places for a request, and places it with one button', async () => {
+    const page = await openPage(browser);
+    await page.goto(`${site.url}/requests/R-165`);
+    await page.getByRole('link', { name: 'Find a place' }).click();
+    const offers = page.locator('.offers > li');
+    expect(await offers.count()).toBeLessThanOrEqual(10);
+    const promised = (await offers.first().locator('strong').first().textContent()) ?? '';
+    await offers.first().getByRole('button', { name: 'Place it here' }).click();
+    await page.getByText(/R-165 is placed at/).waitFor();
+    const booking = (await site.store.bookings.ofRequest('R-165'))!;
+    const at = `${booking.date} ${String(Math.floor(booking.startMin / 60)).padStart(2, '0')}:${String(booking.startMin % 60).padStart(2, '0')}`;
+    expect(at).toBe(promised.trim());
+    await page.context().close();
+  });
+
   it('shows a change to everybody who looks at the day', async () => {
     const [watching, working] = await Promise.all([openPage(browser), openPage(browser)]);
     await watching.goto(`${site.url}/day/2026-12-09`);
