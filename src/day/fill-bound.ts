@@ -29,42 +29,47 @@ export function upperBound(
         most[r] = Math.max(most[r]!, w!.factor * worth(option));
     });
   // Everybody served at their best is a bound already.
-  let bound = most.reduce((a, b) => a + b, 0);
-  let best = most as readonly number[];
+  const everybody = most.reduce((a, b) => a + b, 0);
+  let found = Infinity;
+  let bound = everybody;
+  let best: readonly number[] = most;
   let prices = most.map((m) => Math.round(m / 2 / priceUnit) * priceUnit);
-  let step = 1.5;
+  let step = 1;
   let since = 0;
+  let direction = new Array<number>(count).fill(0);
   const tables = lineTables(ground);
   for (let round = 0; round < rounds && Math.floor(bound + 1e-9) > reached; round++) {
     const { value, uses } = relaxed(ground, worth, prices, tables);
-    if (value < bound) {
-      if (value < bound - 1e-4 * bound) since = 0;
-      bound = value;
+    if (value < found) {
+      since = value < found * (1 - 1e-4) ? 0 : since + 1;
+      found = value;
+      bound = Math.min(everybody, found);
       best = prices;
     } else since++;
-    if (since > 12) {
-      step /= 1.6;
+    if (since > patience) {
+      step *= 0.7;
       since = 0;
       prices = [...best];
+      direction = direction.fill(0);
       if (step < 1e-3) break;
       continue;
     }
-    let norm = 0;
-    uses.forEach((n, r) => {
-      const g = 1 - n;
-      if (!(prices[r] === 0 && g > 0)) norm += g * g;
-    });
+    // The last directions are kept in part (Camerini, Fratta and Maffioli 1975): plain steps zigzag between requests.
+    direction = direction.map((d, r) => kept * d + (1 - uses[r]!));
+    const norm = direction.reduce((sum, d, r) => sum + (prices[r] === 0 && d > 0 ? 0 : d * d), 0);
     if (norm === 0) break;
-    const length = (step * (value - Math.max(reached, 0.97 * bound))) / norm;
-    prices = prices.map(
-      (u, r) =>
-        Math.max(0, Math.min(most[r]!, Math.round((u - length * (1 - uses[r]!)) / priceUnit))) *
-        priceUnit,
-    );
-    prices = prices.map((u, r) => Math.min(u, most[r]!));
+    const length = (step * (value - Math.max(reached, 0.9 * Math.min(bound, value)))) / norm;
+    prices = prices.map((u, r) => {
+      const units = Math.round((u - length * direction[r]!) / priceUnit);
+      return Math.max(0, Math.min(most[r]!, units * priceUnit));
+    });
   }
-  return { bound: Math.floor(bound + 1e-9), prices: best };
+  return { bound: Math.floor(bound + 1e-9), prices: found < everybody ? best : most };
 }
+
+/** Rounds without progress before steps become shorter, and the share of the last direction kept. */
+const patience = 15;
+const kept = 0.6;
 
 interface LineTable {
   readonly longest: number;

@@ -159,7 +159,6 @@ describe('mending a day', () => {
       without += proposals[0]!.withoutPlace.length;
       if (proposals[0]!.fewest) proved++;
     }
-    console.info({ all, moved, without, proved });
     expect(seen.size).toBe(7);
     expect(moved).toBeGreaterThan(300);
     expect(proved).toBeGreaterThan(250);
@@ -219,7 +218,6 @@ describe('mending a day', () => {
       compared++;
       if (expected > 0) pushes++;
     }
-    console.info({ compared, pushes });
     expect(compared).toBeGreaterThan(60);
     expect(pushes).toBeGreaterThan(10);
   });
