@@ -8,7 +8,7 @@ export { castFor, type Cast, type Candidate } from './cast.js';
 export { choiceProblem } from './choice-problem.js';
 export { runningOrder, type OrderedStep } from './running-order.js';
 export { exitTime, type FixedTime } from './table-parts.js';
-export { chooseExactly } from './solver/exact.js';
+export { chooseCurve, chooseExactly } from './solver/exact.js';
 export { atSeconds, meanS, quantileS } from './distribution.js';
 export type { Choice, ChoiceProblem } from './solver/problem.js';
 export { stillnessWords } from './plan-exam.js';

@@ -9,6 +9,7 @@ import { Planner } from './planner.js';
 import { boardRoutes } from './routes/board.js';
 import { bookingRoutes } from './routes/bookings.js';
 import { consoleRoutes } from './routes/console.js';
+import { fillRoutes } from './routes/fill.js';
 import { libraryRoutes } from './routes/library.js';
 import { liveRoutes } from './routes/live.js';
 import { methodsRoutes } from './routes/methods.js';
@@ -64,6 +65,7 @@ export function createApp(given: WebDeps): Express {
   app.use(requestEditRoutes(deps));
   app.use(planSheetRoutes(deps));
   app.use(placesRoutes(deps));
+  app.use(fillRoutes(deps));
   app.use(owedRoutes(deps));
   app.use(consoleRoutes(deps));
   app.use(libraryRoutes(deps));

@@ -28,6 +28,7 @@ const pages = [
   '/requests/R-106/edit',
   '/requests/R-157/places',
   '/owed',
+  '/fill?propose=1',
   '/library',
   '/library/exams/brain-general',
   '/library/sequences/head-ax-t2-ss-half?field=3',
@@ -52,7 +53,8 @@ describe.skipIf(browserPath === undefined)('every page, light and dark', () => {
   for (const path of pages) {
     it.each(['light', 'dark'] as const)(`${path}, %s`, async (colorScheme) => {
       const page = await openPage(browser, { colorScheme, bypassCSP: true });
-      await page.goto(site.url + path);
+      const answer = await page.goto(site.url + path);
+      expect(answer?.status()).toBe(path === '/no-such-page' ? 404 : 200);
       await page.evaluate(axeSource);
       const violations = await page.evaluate(async () => {
         const axe = (

@@ -106,6 +106,26 @@ describe.skipIf(browserPath === undefined)('the booking desk', () => {
     await page.context().close();
   });
 
+  it('proposes places for everybody who waits, and places the ticked ones only', async () => {
+    const page = await openPage(browser);
+    await page.goto(`${site.url}/fill?propose=1`);
+    const boxes = page.locator('input[name="place"]');
+    const count = await boxes.count();
+    expect(count).toBeGreaterThan(2);
+    const left = (await boxes.first().getAttribute('value'))!.split('|')[0]!;
+    const kept = (await boxes.nth(1).getAttribute('value'))!.split('|');
+    await boxes.first().uncheck();
+    await page.getByRole('button', { name: 'Place the ticked ones' }).click();
+    await page.getByText(`${count - 1} of ${count - 1} placed.`).waitFor();
+    expect(await site.store.bookings.ofRequest(left)).toBeUndefined();
+    expect(await site.store.bookings.ofRequest(kept[0]!)).toMatchObject({
+      scannerId: kept[1],
+      date: kept[2],
+      startMin: Number(kept[3]),
+    });
+    await page.context().close();
+  });
+
   it('shows a change to everybody who looks at the day', async () => {
     const [watching, working] = await Promise.all([openPage(browser), openPage(browser)]);
     await watching.goto(`${site.url}/day/2026-12-09`);
