@@ -25,7 +25,6 @@ describe('the fill command', () => {
     const { code, text } = printed(() => fillFile(demo, { iterations: '60', full: true }));
     expect(code).toBe(0);
     expect(readFileSync(demo, 'utf8')).toBe(before);
-    // eslint-disable-next-line no-control-regex
     const plain = text.replace(/\u001b\[\d+m/g, '');
     for (const line of plain.split('\n')) expect(line.length).toBeLessThanOrEqual(80);
     expect(plain).toMatch(/9 of 9 placed/);
