@@ -5,6 +5,7 @@ import type { PlacingOutcome } from '../../store/index.js';
 import { gone, readClock, readSlotMin, refuseOutsideHours } from '../board-fields.js';
 import { boardPage } from '../board-page.js';
 import type { PageDeps } from '../deps.js';
+import { placeRequest } from '../place-request.js';
 import { summaryOf } from '../planner.js';
 import { isDay } from '../site-time.js';
 import { tell } from '../told.js';
@@ -26,22 +27,8 @@ export function bookingRoutes(deps: PageDeps): Router {
       throw gone('request or scanner', `${form['request']} on ${form['scanner']}`);
     const slotMin = Math.ceil(stored.body.slotS / 60);
     const startMin = readClock(form['start'] ?? '');
-    refuseOutsideHours(stored.id, scanner, date, startMin, slotMin, deps);
-    const outcome = await planner.plan(stored.body, scanner);
-    if (outcome.kind === 'refused') throw new ProblemError(outcome.problems[0]!);
-    const placed = await deps.store.bookings.place(
-      {
-        requestId: stored.id,
-        scannerId: scanner.id,
-        date,
-        startMin,
-        slotMin,
-        teams: [],
-        plan: summaryOf(outcome.plan),
-      },
-      whoIs(request),
-      deps.now(),
-    );
+    const place = { scanner, date, startMin, slotMin };
+    const placed = await placeRequest(deps, stored, place, whoIs(request));
     await answer(
       request,
       response,

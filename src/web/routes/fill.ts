@@ -1,8 +1,10 @@
 import { Router } from 'express';
 import { clock } from '../../day/index.js';
+import { ProblemError } from '../../shared/index.js';
+import type { StoredRequest } from '../../store/index.js';
 import type { PageDeps } from '../deps.js';
 import { proposeFill } from '../fill-proposal.js';
-import { summaryOf } from '../planner.js';
+import { placeRequest, type WantedPlace } from '../place-request.js';
 import { dayFrom, isDay, siteDate } from '../site-time.js';
 import { takeTold, tell } from '../told.js';
 import { whoIs } from '../who.js';
@@ -10,7 +12,7 @@ import { whoIs } from '../who.js';
 /** Fill: a proposal for everybody who waits; the scheduler accepts all, some or none of it. */
 export function fillRoutes(deps: PageDeps): Router {
   const router = Router();
-  const { planner, store, department } = deps;
+  const { store, department } = deps;
 
   router.get('/fill', async (request, response) => {
     const all = await store.requests.list();
@@ -74,20 +76,24 @@ export function fillRoutes(deps: PageDeps): Router {
       ) {
         return `${requestId}: the proposal could not be read`;
       }
-      const outcome = await planner.plan(stored.body, scanner, slotMin * 60);
-      if (outcome.kind === 'refused')
-        return `${requestId}: ${outcome.problems[0]?.limit ?? 'cannot be planned'}`;
-      const result = await store.bookings.place(
-        { requestId, scannerId, date, startMin, slotMin, teams: [], plan: summaryOf(outcome.plan) },
-        whoIs(request),
-        deps.now(),
-      );
+      const result = await tried(stored, { scanner, date, startMin, slotMin }, whoIs(request));
+      if (typeof result === 'string') return `${requestId}: ${result}`;
       if (result.kind === 'placed') return undefined;
       return result.kind === 'taken'
         ? `${requestId}: the place went to ${result.by.requestId} meanwhile`
         : `${requestId}: ${result.why}`;
     }
   });
+
+  /** A refusal of one place must not lose the others. */
+  async function tried(stored: StoredRequest, place: WantedPlace, who: string) {
+    try {
+      return await placeRequest(deps, stored, place, who);
+    } catch (error) {
+      if (error instanceof ProblemError) return error.problem.limit;
+      throw error;
+    }
+  }
 
   /** The department's coming days, or the ones asked for, two weeks at most. */
   function daysAsked(from: unknown, until: unknown): readonly string[] {
