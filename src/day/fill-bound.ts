@@ -2,6 +2,14 @@ import { noonStep, type Ground, type SlotOption } from './fill-problem.js';
 
 export type BoundTier = 'diagnostic' | 'targeted' | 'screening';
 
+export interface UpperBound {
+  readonly bound: number;
+  /** What each request is worth beyond the scanner time it takes, at the best prices. */
+  readonly requestPrices: readonly number[];
+  /** What five minutes of each free stretch are worth, at the same prices. */
+  readonly stepPrices: readonly number[];
+}
+
 /** Prices are multiples of this, so that sums of them are exact and the bound is a proof, not a rounding. */
 const priceUnit = 1 / 1024;
 
@@ -19,7 +27,7 @@ export function upperBound(
   tier: BoundTier,
   reached: number,
   rounds = 400,
-): { readonly bound: number; readonly prices: readonly number[] } {
+): UpperBound {
   const worth = (option: SlotOption) => option[tier];
   const count = ground.problem.waiting.length;
   const most = new Array<number>(count).fill(0);
@@ -64,7 +72,15 @@ export function upperBound(
       return Math.max(0, Math.min(most[r]!, units * priceUnit));
     });
   }
-  return { bound: Math.floor(bound + 1e-9), prices: found < everybody ? best : most };
+  const { gains } = relaxed(ground, worth, best, tables);
+  return {
+    bound: Math.floor(bound + 1e-9),
+    requestPrices: best,
+    stepPrices: gains.map((gain, s) => {
+      const { from, to } = ground.stretches[s]!;
+      return gain / (to - from);
+    }),
+  };
 }
 
 /** Rounds without progress before steps become shorter, and the share of the last direction kept. */
@@ -90,8 +106,13 @@ function relaxed(
   worth: (option: SlotOption) => number,
   prices: readonly number[],
   tables: readonly LineTable[],
-): { readonly value: number; readonly uses: readonly number[] } {
+): {
+  readonly value: number;
+  readonly uses: readonly number[];
+  readonly gains: readonly number[];
+} {
   const uses = new Array<number>(prices.length).fill(0);
+  const gains = new Array<number>(ground.stretches.length).fill(0);
   let value = prices.reduce((a, b) => a + b, 0);
   ground.lines.forEach((line, l) => {
     const stretches = ground.ofLine[l] ?? [];
@@ -134,6 +155,7 @@ function relaxed(
         pick[t - from] = length;
       }
       value += best[0]!;
+      gains[s] = best[0]!;
       for (let t = from; t < to;) {
         const n = pick[t - from]!;
         if (n === 0) t++;
@@ -144,5 +166,5 @@ function relaxed(
       }
     }
   });
-  return { value, uses };
+  return { value, uses, gains };
 }

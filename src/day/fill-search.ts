@@ -1,4 +1,5 @@
 import { Board, type Seat, type Spot } from './fill-board.js';
+import type { UpperBound } from './fill-bound.js';
 import { compareFills, guideOf, type FillObjective } from './fill-objective.js';
 import { priorityWorth, type Ground, type SlotOption } from './fill-problem.js';
 
@@ -15,6 +16,8 @@ export interface SearchOptions {
   /** Uniform numbers in [0, 1). */
   readonly random: () => number;
   readonly reportEvery?: number;
+  /** Prices of the bound: whom to place first, and what time is worth where. */
+  readonly prices?: Pick<UpperBound, 'requestPrices' | 'stepPrices'>;
 }
 
 /**
@@ -23,11 +26,11 @@ export interface SearchOptions {
  */
 export function* searchFill(
   ground: Ground,
-  { iterations, random, reportEvery = 50 }: SearchOptions,
+  { iterations, random, reportEvery = 50, prices }: SearchOptions,
 ): Generator<SearchProgress, SearchProgress> {
   const board = new Board(ground);
   const count = ground.problem.waiting.length;
-  const tables = tablesOf(ground);
+  const tables = { ...tablesOf(ground), ...prices };
   const { scale } = tables;
   recreate(board, tables, random, 0);
   let objective = board.objective();
@@ -141,7 +144,9 @@ function recreate(board: Board, tables: Tables, random: () => number, blink: num
   const waiting = board.where.flatMap((s, r) => (s < 0 ? [r] : []));
   const key = orderKey(tables, random);
   waiting.sort((a, b) => key[b]! - key[a]!);
-  const price = random() < 0.2 ? 0 : tables.density * 1.2 * random();
+  const { stepPrices } = tables;
+  const priced = stepPrices !== undefined && random() < 0.6;
+  const level = random() < 0.2 ? 0 : priced ? 0.5 + random() : tables.density * 1.2 * random();
   const alone = random() < 0.5 ? 1e-6 : 1e-4;
   for (const r of waiting) {
     let top: Spot | undefined;
@@ -151,7 +156,7 @@ function recreate(board: Board, tables: Tables, random: () => number, blink: num
       if (blink > 0 && random() < blink) return;
       const value =
         spotValue(spot.option, spot.window.factor) -
-        price * spot.option.steps -
+        level * (priced ? stepPrices[spot.stretch]! : 1) * spot.option.steps -
         alone * coilPenalty(board, r, spot) -
         1e-10 *
           worth *
@@ -224,6 +229,8 @@ interface Tables {
   readonly scale: number;
   /** Worth of a step of scanner time, about. */
   readonly density: number;
+  readonly requestPrices?: readonly number[];
+  readonly stepPrices?: readonly number[];
 }
 
 function tablesOf(ground: Ground): Tables {
@@ -260,8 +267,15 @@ function tablesOf(ground: Ground): Tables {
 
 /** By what the requests that wait are taken in turn: chance, worth, worth per step, length. */
 function orderKey(tables: Tables, random: () => number): readonly number[] {
-  const kind = Math.floor(random() * 4);
+  const kind = Math.floor(random() * (tables.requestPrices === undefined ? 4 : 6));
   if (kind === 0) return tables.top.map(() => random());
-  const list = kind === 1 ? tables.top : kind === 2 ? tables.perStep : tables.length;
+  const list =
+    kind === 1
+      ? tables.top
+      : kind === 2
+        ? tables.perStep
+        : kind === 3
+          ? tables.length
+          : tables.requestPrices!;
   return list.map((v) => v * (0.8 + 0.4 * random()));
 }

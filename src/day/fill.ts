@@ -73,7 +73,9 @@ export function* fill(
     boundRounds = 400,
   } = options;
   const ground = layOut(problem);
-  const search = searchFill(ground, { iterations, random, reportEvery });
+  // A bound before there is an answer: its prices lead the search.
+  const prices = upperBound(ground, 'diagnostic', 0, boundRounds);
+  const search = searchFill(ground, { iterations, random, reportEvery, prices });
   let bound: FillBound | undefined;
   let step = search.next();
   while (step.done !== true) {
