@@ -10,14 +10,21 @@ export type PreviewInput =
 
 /**
  * A sequence's acquisition as the preview takes it: which echo fills which line when, and the signal of each echo
- * per tissue of the phantom. Spin echo and echo trains on a line grid; blades, gradient echo and diffusion are
- * not drawn.
+ * per tissue of the phantom. Spin echo and echo trains on a line grid, one slice at a time. Not drawn: blades,
+ * gradient echo, diffusion, slabs encoded in three dimensions, and images after contrast medium, which the phantom's
+ * tissues do not take up. The sign that an inversion leaves is lost tissue by tissue, as in `trainEchoes`.
  *
  * @param noise standard deviation of the image's noise, in the unit of the signals
  */
 export function previewInput(sequence: Sequence, phantom: Phantom, noise: number): PreviewInput {
   if (sequence.family === 'radial-fast-spin-echo') {
     return { kind: 'not drawn', why: 'rotating blades have no line grid' };
+  }
+  if (sequence.contrast === 'after') {
+    return { kind: 'not drawn', why: 'the phantom takes up no contrast medium' };
+  }
+  if (sequence.dimensions === 3) {
+    return { kind: 'not drawn', why: 'only single slices are simulated, no slab' };
   }
   if (!hasEchoTrain(sequence) && sequence.family !== 'spin-echo') {
     return { kind: 'not drawn', why: 'only spin echo and echo trains are simulated as images' };

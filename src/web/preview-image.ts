@@ -6,12 +6,12 @@ import { noiseOf, previewInput, type Sequence } from '../sequences/index.js';
 const frame = { columns: 240, rows: 240, widthMm: 200, heightMm: 200 };
 
 /**
- * Noise of the full-quality picture, in the unit of the signals: grey matter then stands about forty
- * times above it. An assumption; between pictures the ratio of noises is the computed one.
+ * Noise of the full-quality picture, in the unit of the signals: grey matter of a T2 picture then stands about
+ * forty times above it. An assumption; between pictures the ratio of noises is the computed one.
  */
 const fullQualityNoise = 0.006;
 
-/** A nod half-way through: what an unsettled patient does. Assumed for the picture only. */
+/** A shift and a turn half-way through, in the plane of the slice. Assumed for the picture only. */
 export const shownMovement = { shiftXMm: 2, shiftYMm: 4, turnDeg: 5 } as const;
 
 export type Picture =
@@ -19,8 +19,8 @@ export type Picture =
   | { readonly kind: 'not drawn'; readonly why: string };
 
 /**
- * Simulated picture of a head phantom by a sequence, as PNG, 8 bits of grey. Brightness is scaled alike for
- * every picture of one weighting, to its brightest fluid.
+ * Simulated picture of a head phantom by a sequence, as PNG, 8 bits of grey. White is each picture's own
+ * brightest half percent, as a reader would set the window; noise is seen against that.
  *
  * @param reference full-quality sequence whose noise sets the scale
  * @param random uniform in [0, 1)

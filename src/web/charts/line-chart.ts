@@ -1,5 +1,6 @@
 import { scaleLinear } from 'd3-scale';
 import { line } from 'd3-shape';
+import { escaped, picture, r, ticksBelow, type PictureWords } from './svg.js';
 
 /** One curve: evenly spaced values from `firstX` on. Dashes tell curves apart without colour. */
 export interface Curve {
@@ -9,9 +10,7 @@ export interface Curve {
   readonly stepX: number;
 }
 
-export interface LineChart {
-  readonly title: string;
-  readonly description: string;
+export interface LineChart extends PictureWords {
   readonly xLabel: string;
   readonly yLabel: string;
   readonly curves: readonly Curve[];
@@ -37,12 +36,6 @@ export function lineChart(chart: LineChart): string {
     .nice(4)
     .range([size.height - size.bottom, top]);
   const bottom = size.height - size.bottom;
-  const xTicks = x
-    .ticks(6)
-    .map(
-      (t) =>
-        `<g transform="translate(${r(x(t))},${bottom})"><line y2="5" stroke="currentColor"/><text y="18" text-anchor="middle">${t}</text></g>`,
-    );
   const yTicks = y
     .ticks(4)
     .map(
@@ -61,22 +54,13 @@ export function lineChart(chart: LineChart): string {
     const at = `translate(${size.left + (n % 2) * 200},${10 + 16 * Math.floor(n / 2)})`;
     return `<g transform="${at}"><line x2="28" stroke="currentColor" stroke-width="2" stroke-dasharray="${dashes[n % dashes.length]}"/><text x="34" dy="4">${escaped(curve.name)}</text></g>`;
   });
-  return [
-    `<svg viewBox="0 0 ${size.width} ${size.height}" role="img" aria-label="${escaped(`${chart.title}. ${chart.description}`)}" class="chart">`,
+  return picture(chart, size, [
     ...yTicks,
-    ...xTicks,
+    ...ticksBelow(x, 6, bottom),
     `<line x1="${size.left}" x2="${size.width - size.right}" y1="${bottom}" y2="${bottom}" stroke="currentColor"/>`,
     ...curves,
     ...legend,
     `<text x="${(size.left + size.width) / 2}" y="${size.height - 6}" text-anchor="middle">${escaped(chart.xLabel)}</text>`,
     `<text transform="translate(12,${(top + bottom) / 2}) rotate(-90)" text-anchor="middle">${escaped(chart.yLabel)}</text>`,
-    '</svg>',
-  ].join('');
-}
-
-const r = (value: number) => Math.round(value * 10) / 10;
-
-/** Text that cannot become markup. */
-export function escaped(text: string): string {
-  return text.replace(/[&<>"']/g, (c) => `&#${c.charCodeAt(0)};`);
+  ]);
 }

@@ -5,14 +5,17 @@ import { comparedPictures } from '../view-models/compared-pictures.js';
 import { examPage } from '../view-models/exam-page.js';
 import { libraryPage } from '../view-models/library-page.js';
 import { sequencePage } from '../view-models/sequence-page.js';
+import { previewRoutes } from './preview.js';
 
-/** The site library: exams, sequences, and each sequence worked out. */
+/** The site library: exams, sequences, and each sequence worked out with its simulated pictures. */
 export function libraryRoutes(deps: WebDeps): Router {
   const router = Router();
   const { library } = deps.ground;
+  const lists = libraryPage(library);
+  router.use(previewRoutes(deps));
 
   router.get('/library', (_request, response) => {
-    response.render('library', { title: 'Library', page: libraryPage(library) });
+    response.render('library', { title: 'Library', page: lists });
   });
 
   router.get('/library/exams/:id', (request, response, next) => {

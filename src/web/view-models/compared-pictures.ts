@@ -43,7 +43,9 @@ export function fullQualityOf(sequence: Sequence, library: SiteLibrary): Sequenc
   const references = viewsOfSequence(library, sequence.id).map(({ view }) => view.reference);
   if (references.includes(sequence.id)) return sequence;
   const found = references.flatMap((id) => sequenceAt(library, id, sequence.fieldT) ?? []);
-  return found.find((s) => s.sliceThicknessMm === sequence.sliceThicknessMm) ?? found[0] ?? sequence;
+  return (
+    found.find((s) => s.sliceThicknessMm === sequence.sliceThicknessMm) ?? found[0] ?? sequence
+  );
 }
 
 /** The single-shot a view would fall back to. */

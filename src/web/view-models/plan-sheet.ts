@@ -1,5 +1,7 @@
+import { scaleLinear } from 'd3-scale';
 import type { Grade } from '../../exams/index.js';
 import type { Plan, PlanStep, PlannedAnswer } from '../../planning/index.js';
+import { tableTimeChart } from '../charts/table-time-chart.js';
 import { chanceWords } from './day-board.js';
 
 /** A plan as a page shows it: everything already in words. */
@@ -8,7 +10,11 @@ export interface PlanSheet {
   readonly headline: string;
   readonly holds: boolean;
   readonly shorter?: string;
+  /** Table time against the slot, as SVG; none where nothing is run. */
+  readonly tableTime?: string;
   readonly steps: readonly SheetStep[];
+  /** Time axis of the running order: round minutes, and their distance. */
+  readonly axis: { readonly ticks: readonly SheetTick[]; readonly stepPercent: number };
   readonly answers: readonly PlannedAnswer[];
   readonly slots: readonly SheetSlot[];
   readonly worstIsDiagnostic: boolean;
@@ -24,6 +30,11 @@ export interface SheetStep {
   readonly chance: string;
   readonly leftPercent: number;
   readonly widthPercent: number;
+}
+
+export interface SheetTick {
+  readonly minutes: number;
+  readonly leftPercent: number;
 }
 
 /** One slot length on the time-answer curve. */
@@ -57,7 +68,9 @@ export function planSheet(plan: Plan, where: { readonly linkTo: string | undefin
     ...(holds && sameGradesFromS < plan.slotS
       ? { shorter: `${minutes(sameGradesFromS)} would give the same grades.` }
       : {}),
+    ...(empty ? {} : { tableTime: tableTimeChart({ ...plan.tableTime, slotS: plan.slotS }) }),
     steps: plan.steps.map((step) => sheetStep(step, endS, plan.scanner.fieldT)),
+    axis: timeAxis(endS),
     answers: plan.answers,
     slots: plan.curve.map((point) => ({
       minutes: Math.round(point.slotS / 60),
@@ -70,6 +83,18 @@ export function planSheet(plan: Plan, where: { readonly linkTo: string | undefin
       grades: point.grades,
     })),
     worstIsDiagnostic: plan.answers.every((a) => a.grade === 'diagnostic'),
+  };
+}
+
+/** Round minutes along the running order; the last few percent stay free of figures, which would stick out. */
+function timeAxis(endS: number): PlanSheet['axis'] {
+  const ticks = scaleLinear()
+    .domain([0, endS / 60])
+    .ticks(4)
+    .map((at) => ({ minutes: at, leftPercent: (100 * at) / (endS / 60) }));
+  return {
+    ticks: ticks.filter((t) => t.leftPercent > 0 && t.leftPercent < 95),
+    stepPercent: ticks[1]?.leftPercent ?? 100,
   };
 }
 

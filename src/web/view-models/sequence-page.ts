@@ -1,129 +1,130 @@
-import { viewsOfSequence, sequenceAt, type SiteLibrary } from '../../exams/index.js';
+import {
+  relativeContrastToNoise,
+  sequenceAt,
+  viewsOfSequence,
+  type ClinicalQuestion,
+  type Exam,
+  type SiteLibrary,
+  type Target,
+  type View,
+} from '../../exams/index.js';
 import { spreadWidthMm, tissueAt } from '../../physics/index.js';
 import {
   assess,
   effectiveEchoTimeMs,
-  hasEchoTrain,
+  familyWords,
   lineSignal,
   rfExposure,
   scanTime,
-  trainEchoes,
   untroubledBreathing,
   voxelOf,
+  type LineSignal,
+  type ScanTime,
   type Sequence,
 } from '../../sequences/index.js';
-import { lineChart } from '../charts/line-chart.js';
+import { parameterRows } from './parameter-rows.js';
+import { sequenceCharts } from './sequence-charts.js';
+import { figure, percent } from './value-words.js';
 
-const fixed = (x: number, digits = 2) => (Number.isFinite(x) ? x.toFixed(digits) : 'none');
+const mostTissues = 6;
+
+interface TargetOfView {
+  readonly exam: Exam;
+  readonly view: View;
+  readonly question: ClinicalQuestion;
+  readonly target: Target;
+}
 
 /** A sequence at one field with everything worked out: time line by line, echoes, k-space weights, blur, targets. */
 export function sequencePage(sequence: Sequence, library: SiteLibrary) {
   const time = scanTime(sequence, untroubledBreathing);
   const served = viewsOfSequence(library, sequence.id);
-  const targets = served.flatMap(({ exam, view }) =>
+  const targets: readonly TargetOfView[] = served.flatMap(({ exam, view }) =>
     exam.questions.flatMap((question) => {
       const need = question.needs.find((n) => n.view === view.id);
       return need?.target === undefined ? [] : [{ exam, view, question, target: need.target }];
     }),
   );
-  const tissues = [
-    ...new Set(targets.flatMap((t) => [t.target.tissue, t.target.background])),
-  ].slice(0, 6);
-  const signals = tissues.map((name) => ({
-    name,
-    signal: lineSignal(sequence, tissueAt(name, sequence.fieldT)),
-  }));
+  const signals = [...new Set(targets.flatMap((t) => [t.target.tissue, t.target.background]))]
+    .slice(0, mostTissues)
+    .map((name) => ({ name, signal: lineSignal(sequence, tissueAt(name, sequence.fieldT)) }));
   const voxel = voxelOf(sequence);
-  const rows = signals.map(({ name, signal }) =>
-    signal.kind === 'not computed'
-      ? { name, why: signal.why }
-      : {
-          name,
-          signal: fixed(signal.weights[Math.floor(signal.weights.length / 2)] ?? 0, 4),
-          blurMm: fixed(spreadWidthMm(signal.weights, voxel.phaseMm)),
-          blurPixels: fixed(spreadWidthMm(signal.weights, 1)),
-        },
-  );
   return {
+    kind: `${familyWords[sequence.family]}, ${sequence.weighting}, ${sequence.plane}`,
     time,
-    interval: time.kind === 'possible' ? time.intervals : undefined,
-    rf: time.kind === 'possible' ? fixed(rfExposure(sequence, time).b1RmsMicroTesla) : undefined,
-    effectiveEchoTime: fixed(effectiveEchoTimeMs(sequence), 1),
-    pixel: `${fixed(voxel.phaseMm)} x ${fixed(voxel.frequencyMm)} mm, slice ${fixed(voxel.sliceMm, 1)} mm`,
-    tissues: rows,
-    charts: chartsOf(sequence, signals),
-    targets: targets.slice(0, 24).map(({ exam, view, question, target }) => {
-      const own = assess(sequence, target);
-      const reference = sequenceAt(library, view.reference, sequence.fieldT);
-      const full = reference === undefined ? undefined : assess(reference, target);
-      const share =
-        own.kind === 'computed' && full?.kind === 'computed' && full.contrastToNoise > 0
-          ? `${Math.round((100 * own.contrastToNoise) / full.contrastToNoise)} %`
-          : 'not computed';
-      return {
-        exam: exam.name,
-        examId: exam.id,
-        question: question.name,
-        what: `${target.kind === 'border' ? 'border of' : `${target.sizeMm} mm`} ${target.tissue} in ${target.background}`,
-        border: own.kind === 'computed' ? `${fixed(own.borderWidthMm)} mm` : own.why,
-        share,
-      };
-    }),
+    ...(time.kind === 'possible' ? { still: stillWords(time), rf: b1Rms(sequence, time) } : {}),
+    effectiveEchoTime: `${effectiveEchoTimeMs(sequence).toFixed(1)} ms`,
+    pixel: `${figure(voxel.phaseMm)} x ${figure(voxel.frequencyMm)} mm, slice ${figure(voxel.sliceMm)} mm`,
+    tissues: signals.map(({ name, signal }) => tissueRow(name, signal, voxel.phaseMm)),
+    remarks: [
+      ...new Set(signals.flatMap((s) => (s.signal.kind === 'computed' ? s.signal.remarks : []))),
+    ],
+    charts: sequenceCharts(sequence, signals),
+    targets: targets.map((target) => targetRow(sequence, library, target)),
+    asked: percent(library.policy.physics.relativeContrastToNoise.value.diagnostic),
     served: served.map(({ exam, view }) => ({
-      examId: exam.id,
+      href: `/library/exams/${exam.id}`,
       exam: exam.name,
       view: view.name,
-      reference: view.reference === sequence.id,
+      isFullQuality: view.reference === sequence.id,
     })),
-    parameters: Object.entries(sequence)
-      .filter(([name]) => !['id', 'name', 'source', 'basis', 'fieldT'].includes(name))
-      .map(([name, value]) => ({
-        name,
-        value: typeof value === 'object' ? JSON.stringify(value) : String(value),
-      })),
+    parameters: parameterRows(sequence),
   };
 }
 
-function chartsOf(
-  sequence: Sequence,
-  signals: readonly { readonly name: string; readonly signal: ReturnType<typeof lineSignal> }[],
-): readonly string[] {
-  const computed = signals.flatMap(({ name, signal }) =>
-    signal.kind === 'computed' ? [{ name, weights: signal.weights }] : [],
-  );
-  if (computed.length === 0) return [];
-  const charts: string[] = [];
-  if (hasEchoTrain(sequence)) {
-    charts.push(
-      lineChart({
-        title: 'Echo train',
-        description: `Amplitude of each echo for ${computed.map((c) => c.name).join(', ')}.`,
-        xLabel: 'echo',
-        yLabel: 'amplitude',
-        curves: computed.map(({ name }) => ({
-          name,
-          values: trainEchoes(sequence, tissueAt(name, sequence.fieldT)),
-          firstX: 1,
-          stepX: 1,
-        })),
-      }),
-    );
-  }
-  charts.push(
-    lineChart({
-      title: 'Weight along k-space',
-      description: 'Signal on each phase-encode line; flat means sharp, peaked means blurred.',
-      xLabel: 'phase-encode line from the centre',
-      yLabel: 'signal',
-      curves: computed.map(({ name, weights }) => ({
-        name,
-        values: weights,
-        firstX: -Math.floor(weights.length / 2),
-        stepX: 1,
-      })),
-    }),
-  );
-  return charts;
+const pieces: Readonly<Record<ScanTime['intervals']['kind'], string>> = {
+  whole: 'in one piece',
+  slice: 'each slice by itself',
+  repeat: 'each image by itself',
+  hold: 'each breath-hold by itself',
+  phase: 'each timed phase by itself',
+};
+
+function stillWords({ intervals }: ScanTime): string {
+  const length = `${figure(intervals.lengthS)} s`;
+  return intervals.count === 1
+    ? `${length}, ${pieces[intervals.kind]}`
+    : `${intervals.count} times ${length}, ${pieces[intervals.kind]}`;
+}
+
+const b1Rms = (sequence: Sequence, time: ScanTime) =>
+  rfExposure(sequence, time).b1RmsMicroTesla.toFixed(2);
+
+function tissueRow(name: string, signal: LineSignal, pixelMm: number) {
+  if (signal.kind === 'not computed') return { name, why: `not computed: ${signal.why}` };
+  const centre = signal.weights[Math.floor(signal.weights.length / 2)] ?? 0;
+  if (centre < 0.0005) return { name, why: 'no signal' };
+  return {
+    name,
+    signal: centre.toFixed(3),
+    blurMm: spreadWidthMm(signal.weights, pixelMm).toFixed(2),
+    blurPixels: spreadWidthMm(signal.weights, 1).toFixed(2),
+  };
+}
+
+function targetRow(sequence: Sequence, library: SiteLibrary, of: TargetOfView) {
+  const { exam, view, question, target } = of;
+  const own = assess(sequence, target);
+  const reference = sequenceAt(library, view.reference, sequence.fieldT);
+  const full = reference === undefined ? undefined : assess(reference, target);
+  const pair = `${target.tissue} in ${target.background}`;
+  return {
+    href: `/library/exams/${exam.id}`,
+    exam: exam.name,
+    question: question.name,
+    what: target.kind === 'border' ? `border of ${pair}` : `${target.sizeMm} mm ${pair}`,
+    border: own.kind === 'computed' ? borderWords(own.borderWidthMm, target) : own.why,
+    share:
+      own.kind === 'computed' && full?.kind === 'computed'
+        ? percent(Math.round(100 * relativeContrastToNoise(own, full)) / 100)
+        : 'not computed',
+  };
+}
+
+function borderWords(widthMm: number, target: Target): string {
+  if (!Number.isFinite(widthMm)) return 'no edge';
+  const width = `${widthMm.toFixed(2)} mm`;
+  return target.kind === 'border' ? `${width}, a caliper tolerates ${target.sizeMm} mm` : width;
 }
 
 export type SequencePage = ReturnType<typeof sequencePage>;
