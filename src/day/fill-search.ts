@@ -41,9 +41,9 @@ export function* searchFill(
     if (i % reportEvery === 0)
       yield { iteration: i, of: iterations, best: best.copy(), objective: bestObjective };
     const done = i / iterations;
-    // Answers first, then the last third settles overruns, coils and waiting.
+    // Answers first, then the end settles overruns, coils and waiting.
     const warmth =
-      done < 0.7 ? 0.3 * scale * 200 ** (-done / 0.7) : 1e-4 * 1e-6 ** ((done - 0.7) / 0.3);
+      done < 0.85 ? 0.3 * scale * 200 ** (-done / 0.85) : 1e-4 * 1e-6 ** ((done - 0.85) / 0.15);
     const before = ground.stretches.map((_, s) => board.seatsOf(s));
     if (random() < 0.5) force(board, tables, random);
     else ruin(board, random);

@@ -82,6 +82,28 @@ describe('filling the day', () => {
     }
   });
 
+  // Source: second solver, HiGHS, linear bound of a department's week (4 scanners, 80 requests, 5 days).
+  it('comes near the linear bound for a crowded week, and its own bound says how near', async () => {
+    for (const seed of [1, 2, 7]) {
+      const problem = inventedDepartment(seed, {
+        scanners: 4,
+        days: 5,
+        requests: 80,
+        taken: 450,
+      });
+      const linear = (await highsDay(problem, 'relaxed')) as number;
+      const filled = fillAll(problem, { random: stream('week', seed), iterations: 6000 });
+      const reached = filled.objective.diagnostic;
+      expect(brokenRules(problem, filled.placements)).toEqual([]);
+      expect(filled.bound.diagnostic).toBeGreaterThanOrEqual(reached);
+      expect(filled.bound.diagnostic).toBeGreaterThanOrEqual(Math.floor(linear - 1e-6));
+      expect(filled.bound.diagnostic).toBeLessThanOrEqual(1.003 * linear);
+      // Whole people in gaps between bookings: the linear bound itself lies above what can be reached.
+      expect(reached).toBeGreaterThanOrEqual(0.97 * linear);
+      expect(filled.gap).toBeCloseTo(1 - reached / filled.bound.diagnostic, 12);
+    }
+  });
+
   // Source: holds for any right planner that reports as it goes.
   it('reports, can be stopped at any report, never falls back and repeats for the same stream', () => {
     const problem = inventedDepartment(7, { scanners: 2, days: 2, requests: 45 });
