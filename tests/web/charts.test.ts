@@ -48,7 +48,7 @@ describe('the table-time chart', () => {
   it('says its three times and the slot', () => {
     const chart = tableTimeChart({ ...times, slotS: 1800 });
     expect(chart).toContain('between 14 min and 24 min');
-    expect(chart).toContain('half of them before 18 min');
+    expect(chart).toContain('half of them less than 18 min');
     expect(chart).toContain('the slot ends at 30 min');
   });
   it('is one filled box inside the slot; what reaches beyond is empty and dashed', () => {

@@ -39,7 +39,7 @@ export function tableTimeChart(times: TableTimes): string {
   return picture(
     {
       title: 'Table time against the slot',
-      description: `8 in 10 such exams end between ${minutes(low)} and ${minutes(high)} after entry, half of them before ${minutes(middle)}; the slot ends at ${minutes(slot)}.`,
+      description: `8 in 10 such exams take between ${minutes(low)} and ${minutes(high)} with getting in and out, half of them less than ${minutes(middle)}; the slot ends at ${minutes(slot)}.`,
     },
     size,
     [
@@ -50,7 +50,7 @@ export function tableTimeChart(times: TableTimes): string {
       across(middle, barY - 3, barY + barHeight + 3, 4),
       across(slot, 18, axisY, 2),
       `<text x="${r(x(slot))}" y="12" text-anchor="${slot > high / 2 ? 'end' : 'start'}">slot ends</text>`,
-      `<text x="${size.width / 2}" y="${size.height - 4}" text-anchor="middle">minutes since entry; bar: 8 in 10; thick line: median</text>`,
+      `<text x="${size.width / 2}" y="${size.height - 4}" text-anchor="middle">minutes with getting in and out; bar: 8 in 10; thick line: median</text>`,
     ],
   );
 }
