@@ -114,7 +114,10 @@ export function answeredSoFar(
 }
 
 /** Views whose images came out clean. What came out clean is graded without the chance of movement. */
-function doneViews(console: ConsoleExam, state: ConsoleState): ReadonlyMap<string, Candidate> {
+export function doneViews(
+  console: ConsoleExam,
+  state: ConsoleState,
+): ReadonlyMap<string, Candidate> {
   const { ground, exam, questions, scanner } = console;
   const { library, evidence } = ground;
   const done = new Map<string, Candidate>();

@@ -2,8 +2,8 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   answeredSoFar,
+  doneViews,
   foldEvents,
-  remainingOf,
   replan,
   type ConsoleEvent,
   type ConsoleExam,
@@ -247,7 +247,7 @@ describe('1,000 generated stories', () => {
           const state = foldEvents(events.slice(0, n), said);
           expect(state.nowS).toBeGreaterThanOrEqual(beforeS);
           beforeS = state.nowS;
-          const answered = answeredSoFar(exam, remainingOf(exam, state, slotS - state.nowS).done);
+          const answered = answeredSoFar(exam, doneViews(exam, state));
           const clean = state.tries.filter((t) => t.outcome === 'clean').length;
           if (clean <= cleanBefore)
             answered.forEach((rank, q) => expect(rank).toBeLessThanOrEqual(answeredBefore[q]!));
