@@ -12,8 +12,8 @@ import {
   type WaitingRequest,
 } from '../../day/index.js';
 import type { BookedRequest } from '../../interchange/index.js';
-import type { PlanningGround } from '../../planning/index.js';
-import { chooseCurve } from '../../planning/solver/exact.js';
+import { chooseCurve, type PlanningGround } from '../../planning/index.js';
+
 import type { Department } from '../../day/index.js';
 import { openDepartment, openGround, openRequests } from '../ground.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
