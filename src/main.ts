@@ -51,7 +51,9 @@ const app = createApp({
 });
 const server = app.listen(settings.port, settings.host, (error) => {
   if (error) {
-    print(`Port ${settings.port} on ${settings.host} cannot be used (${error.message}). Set PORT to another number and start again.`);
+    print(
+      `Port ${settings.port} on ${settings.host} cannot be used (${error.message}). Set PORT to another number and start again.`,
+    );
     process.exit(1);
   }
   print(`${department.name}\nOpen http://${settings.host}:${settings.port}/ - stop with Ctrl+C.`);
@@ -60,6 +62,8 @@ const server = app.listen(settings.port, settings.host, (error) => {
 for (const signal of ['SIGINT', 'SIGTERM'] as const) {
   process.on(signal, () => {
     server.closeAllConnections();
-    server.close(() => void Promise.all([solver.close(), store.close()]).then(() => process.exit(0)));
+    server.close(
+      () => void Promise.all([solver.close(), store.close()]).then(() => process.exit(0)),
+    );
   });
 }

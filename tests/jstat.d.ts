@@ -3,9 +3,15 @@ declare module 'jstat' {
   const jstat: {
     gammafn(x: number): number;
     weibull: { cdf(x: number, scale: number, shape: number): number };
-    lognormal: { cdf(x: number, mu: number, sigma: number): number; inv(p: number, mu: number, sigma: number): number };
+    lognormal: {
+      cdf(x: number, mu: number, sigma: number): number;
+      inv(p: number, mu: number, sigma: number): number;
+    };
     binomial: { pdf(k: number, n: number, p: number): number };
-    normal: { inv(p: number, mean: number, sd: number): number; cdf(x: number, mean: number, sd: number): number };
+    normal: {
+      inv(p: number, mean: number, sd: number): number;
+      cdf(x: number, mean: number, sd: number): number;
+    };
   };
   export default jstat;
 }
