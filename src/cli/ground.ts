@@ -47,3 +47,20 @@ export function openRequests(path: string): ReadRequests {
   const text = readText(path);
   return /\.json$/i.test(path) ? readRequestsJson(text) : readRequestsCsv(text);
 }
+
+/** Asked requests that are not among the rows that could be read. */
+export function unknownRequests(
+  ids: readonly string[],
+  read: ReadRequests,
+  file: string,
+): readonly Problem[] {
+  return ids
+    .filter((id) => !read.requests.some((r) => r.request.id === id))
+    .map((id) => ({
+      code: 'request-unknown',
+      thing: `request ${id}`,
+      value: 'not among the rows that could be read',
+      limit: `${read.requests.length} request(s) in ${file}`,
+      wayOut: 'Check the number.',
+    }));
+}

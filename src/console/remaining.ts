@@ -54,10 +54,7 @@ export function remainingOf(console: ConsoleExam, state: ConsoleState, leftS: nu
     questions,
     scanner,
     profile,
-    contrast: request.contrast,
-    ...(request.b1RmsLimitMicroTesla === undefined
-      ? {}
-      : { b1RmsLimitMicroTesla: request.b1RmsLimitMicroTesla }),
+    request,
   });
   const done = doneViews(console, state);
   const cast: Cast = {

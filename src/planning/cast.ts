@@ -25,7 +25,7 @@ import {
   type ToleranceProfile,
 } from '../tolerance/index.js';
 import type { EvidenceBook } from './evidence.js';
-import type { ContrastState } from './request.js';
+import type { ContrastState, ExamRequest } from './request.js';
 
 /** One sequence that could serve one view for this patient on this scanner, timed and graded. */
 export interface Candidate {
@@ -64,8 +64,8 @@ export interface CastInput {
   readonly questions: readonly ClinicalQuestion[];
   readonly scanner: ScannerAbilities;
   readonly profile: ToleranceProfile;
-  readonly contrast: ContrastState;
-  readonly b1RmsLimitMicroTesla?: number;
+  /** What the request says about contrast medium and RF exposure. */
+  readonly request: Pick<ExamRequest, 'contrast' | 'b1RmsLimitMicroTesla'>;
 }
 
 /**
@@ -79,7 +79,7 @@ export function castFor(input: CastInput): Cast {
     const candidates: Candidate[] = [];
     const rule = (sequenceId: string, why: string) => ruledOut.push({ view, sequenceId, why });
     for (const id of view.candidates) {
-      const refusal = contrastRefusal(view, input.contrast);
+      const refusal = contrastRefusal(view, input.request.contrast);
       if (refusal !== undefined) {
         rule(id, refusal);
         continue;
@@ -142,10 +142,10 @@ function gradedCandidate(
   input: CastInput,
 ): Candidate | string {
   const { policy } = input.library;
-  if (input.b1RmsLimitMicroTesla !== undefined) {
+  if (input.request.b1RmsLimitMicroTesla !== undefined) {
     const { b1RmsMicroTesla } = rfExposure(sequence, time);
-    if (b1RmsMicroTesla > input.b1RmsLimitMicroTesla) {
-      return `its B1+rms of about ${b1RmsMicroTesla.toFixed(2)} microtesla exceeds the limit of ${input.b1RmsLimitMicroTesla} entered for this patient (the scanner's own figure and the implant's label rule)`;
+    if (b1RmsMicroTesla > input.request.b1RmsLimitMicroTesla) {
+      return `its B1+rms of about ${b1RmsMicroTesla.toFixed(2)} microtesla exceeds the limit of ${input.request.b1RmsLimitMicroTesla} entered for this patient (the scanner's own figure and the implant's label rule)`;
     }
   }
   const clean = cleanChance(

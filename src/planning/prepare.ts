@@ -100,10 +100,7 @@ export function prepare(
     questions,
     scanner,
     profile,
-    contrast: request.contrast,
-    ...(request.b1RmsLimitMicroTesla === undefined
-      ? {}
-      : { b1RmsLimitMicroTesla: request.b1RmsLimitMicroTesla }),
+    request,
   });
   const problem = choiceProblem({ cast, fixed, profile, policy, slotS: request.slotS });
   return {

@@ -15,7 +15,7 @@ import type { BookedRequest } from '../../interchange/index.js';
 import { chooseCurve, type PlanningGround } from '../../planning/index.js';
 
 import type { Department } from '../../day/index.js';
-import { openDepartment, openGround, openRequests } from '../ground.js';
+import { openDepartment, openGround, openRequests, unknownRequests } from '../ground.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
 import { fitted, wrapped } from '../text/layout.js';
 
@@ -81,15 +81,7 @@ export function fillFile(file: string, flags: FillFlags): number {
     flags.id === undefined
       ? flags.all === true || r.booking === undefined
       : flags.id.includes(r.request.id);
-  const missing = (flags.id ?? [])
-    .filter((id) => !read.requests.some((r) => r.request.id === id))
-    .map((id) => ({
-      code: 'request-unknown',
-      thing: `request ${id}`,
-      value: 'not among the rows that could be read',
-      limit: `${read.requests.length} request(s) in ${file}`,
-      wayOut: 'Check the number.',
-    }));
+  const missing = unknownRequests(flags.id ?? [], read, file);
   const taken = read.requests
     .filter((r) => !wanted(r) && r.booking !== undefined)
     .map((r) => takenPlace(r, ground));

@@ -1,6 +1,6 @@
 import type { Command } from 'commander';
 import { linearSolver } from '../../planning/index.js';
-import { openDepartment, openGround, openRequests } from '../ground.js';
+import { openDepartment, openGround, openRequests, unknownRequests } from '../ground.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
 import { planRequests, whenWords, type PlannedList } from '../plan-requests.js';
 import { planBrief, planText } from '../text/plan-text.js';
@@ -62,15 +62,7 @@ export async function planFile(file: string, flags: PlanFlags): Promise<number> 
   } finally {
     await solver.close();
   }
-  const missing = (flags.id ?? [])
-    .filter((id) => !read.requests.some((r) => r.request.id === id))
-    .map((id) => ({
-      code: 'request-unknown',
-      thing: `request ${id}`,
-      value: 'not among the rows that could be read',
-      limit: `${read.requests.length} request(s) in ${file}`,
-      wayOut: 'Check the number.',
-    }));
+  const missing = unknownRequests(flags.id ?? [], read, file);
   const problems = [...read.problems, ...missing, ...list.problems];
   if (flags.json === true) printJson({ plans: list.planned.map((p) => p.plan), problems });
   else {

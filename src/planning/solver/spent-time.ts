@@ -44,8 +44,6 @@ export interface Ahead {
   readonly mostS: number;
 }
 
-export const nothingAhead: Ahead = { leastS: 0, mostS: 0 };
-
 /**
  * Adds a time to a cumulative curve: `out[s]` = sum of mass(t) * curve[s - t], only where times still ahead can need it.
  * @param fromS first second where `curve` is above zero

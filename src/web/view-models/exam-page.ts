@@ -95,5 +95,3 @@ function limitLines(limits: AcquisitionLimits): readonly string[] {
     ),
   ];
 }
-
-export type ExamPage = ReturnType<typeof examPage>;

@@ -78,5 +78,3 @@ function timeWords(sequence: Sequence): string {
   const time = scanTime(sequence, untroubledBreathing);
   return time.kind === 'possible' ? minutesSeconds(time.acquisitionS) : 'cannot run';
 }
-
-export type LibraryPage = ReturnType<typeof libraryPage>;

@@ -11,5 +11,3 @@ export function methodsPage({ physics, movement, tolerance, time }: SitePolicy) 
     blades: percent(movement.bladesCorrect.value),
   };
 }
-
-export type MethodsPage = ReturnType<typeof methodsPage>;

@@ -74,5 +74,3 @@ function pathWords(path: readonly string[], underYears: unknown): string {
     .filter((words) => words !== '')
     .join(': ');
 }
-
-export type PolicyPage = ReturnType<typeof policyPage>;

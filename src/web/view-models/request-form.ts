@@ -90,8 +90,6 @@ export function formValues(body: Readonly<Record<string, unknown>>): FormValues 
 /** A request from the form; the same reader as for lists, so the same rules. */
 export function readForm(values: FormValues): Result<BookedRequest> {
   const { scanner, start, ...rest } = values;
-  void scanner;
-  void start;
   return readRow(rest, 'the form');
 }
 

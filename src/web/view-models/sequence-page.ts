@@ -126,5 +126,3 @@ function borderWords(widthMm: number, target: Target): string {
   const width = `${widthMm.toFixed(2)} mm`;
   return target.kind === 'border' ? `${width}, a caliper tolerates ${target.sizeMm} mm` : width;
 }
-
-export type SequencePage = ReturnType<typeof sequencePage>;
