@@ -7,7 +7,12 @@ declare module 'jstat' {
       cdf(x: number, mu: number, sigma: number): number;
       inv(p: number, mu: number, sigma: number): number;
     };
-    binomial: { pdf(k: number, n: number, p: number): number };
+    binomial: {
+      pdf(k: number, n: number, p: number): number;
+      cdf(k: number, n: number, p: number): number;
+    };
+    poisson: { cdf(k: number, mean: number): number };
+    studentt: { inv(p: number, degrees: number): number };
     normal: {
       inv(p: number, mean: number, sd: number): number;
       cdf(x: number, mean: number, sd: number): number;

@@ -1,1 +1,2 @@
 export * from './problem.js';
+export * from './random.js';
