@@ -37,6 +37,11 @@ export async function holderOf(
       };
 }
 
+/** Gives back every piece that these bookings hold, so that they can swap places; each must claim anew. */
+export async function releaseClaims(tx: Tx, bookingIds: readonly string[]): Promise<void> {
+  await tx.db.deleteFrom('claim').where('booking_id', 'in', bookingIds).execute();
+}
+
 /** Makes a booking's claims those of its place, or none. */
 export async function claimAnew(
   tx: Tx,

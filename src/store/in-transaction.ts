@@ -17,6 +17,7 @@ export interface NewChange {
   readonly from?: unknown;
   readonly to?: unknown;
   readonly undoes?: number;
+  readonly joint?: number;
 }
 
 /** A writing transaction with its author and the pen for the history. */
@@ -24,6 +25,13 @@ export interface Tx extends Author {
   readonly db: Transaction<Tables>;
   /** Adds a line to the history; it stands or falls with the transaction. */
   readonly record: (change: NewChange) => Promise<number>;
+}
+
+/** Thrown by work that has begun to write and finds that it must not: all of it is taken back, the outcome stays. */
+export class TakenBack<T> extends Error {
+  constructor(readonly outcome: T) {
+    super('taken back');
+  }
 }
 
 /**
@@ -55,6 +63,7 @@ export async function inTransaction<T>(
               before: jsonOrNull(change.from),
               after: jsonOrNull(change.to),
               undoes: change.undoes ?? null,
+              joint: change.joint ?? null,
             })
             .returning('seq')
             .executeTakeFirstOrThrow();
@@ -63,7 +72,10 @@ export async function inTransaction<T>(
         const outcome = await work({ db, ...author, record });
         return { outcome, lastSeq };
       }),
-  );
+  ).catch((error: unknown) => {
+    if (error instanceof TakenBack) return { outcome: error.outcome as T, lastSeq: undefined };
+    throw error;
+  });
   if (lastSeq !== undefined) database.listeners.tell(lastSeq);
   return outcome;
 }

@@ -1,5 +1,5 @@
 import type { ExamRequest } from '../planning/index.js';
-import { placeBooking, type NewBooking } from './bookings.js';
+import { placeBooking, type NewBooking } from './placing.js';
 import type { Database } from './database.js';
 import { inTransaction } from './in-transaction.js';
 import type { PlacingOutcome } from './outcomes.js';

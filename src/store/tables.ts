@@ -63,6 +63,8 @@ export interface ChangeRow {
   after: string | null;
   /** The change that this one put back. */
   undoes: number | null;
+  /** The same number on all lines of several bookings changed at once. */
+  joint: number | null;
 }
 
 export interface OwedRow {

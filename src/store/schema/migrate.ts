@@ -4,6 +4,7 @@ import type { Database, DatabaseKind } from '../database.js';
 import { retried } from '../retried.js';
 import { consoleTables } from './console-tables.js';
 import { firstTables } from './first-tables.js';
+import { jointChanges } from './joint-changes.js';
 
 /** Forward only: a step that has been given out is never changed, only followed by another. */
 const steps: readonly {
@@ -12,6 +13,7 @@ const steps: readonly {
 }[] = [
   { name: 'first tables', statements: firstTables },
   { name: 'console log', statements: consoleTables },
+  { name: 'joint changes', statements: jointChanges },
 ];
 
 /** Brings the tables to what this program expects: all missing steps or none, whoever else starts now. */
