@@ -13,6 +13,7 @@ export { compareFills, type FillObjective } from './fill-objective.js';
 export * from './fill.js';
 export { type NotPlaced, type WayIn } from './fill-why.js';
 export { brokenRules, visitBreaks } from './fill-check.js';
+export { takenPlace, waitingRequest } from './waiting-request.js';
 export * from './mend-problem.js';
 export { mend, onTheWayIn, type MendOptions } from './mend.js';
 export { repeatableStream } from './repeatable-stream.js';

@@ -33,6 +33,14 @@ export class MendGrid {
     return row;
   }
 
+  /** Takes hours and breaks away from a place. */
+  open({ scannerId, date, startMin, slotMin }: Booking): void {
+    this.cells
+      .get(scannerId)
+      ?.get(date)
+      ?.fill(free, Math.floor(startMin / stepMin), Math.ceil((startMin + slotMin) / stepMin));
+  }
+
   close(scannerId: string, date: string, fromMin: number, toMin: number): void {
     this.cells
       .get(scannerId)

@@ -5,7 +5,7 @@ import { freeGaps } from './gaps.js';
 import { MendGrid } from './mend-grid.js';
 import type { BookedVisit, MendOutcome, MendProblem, Move, Repair } from './mend-problem.js';
 import { offerAt, rearrange, type Mover, type Rearranged } from './mend-search.js';
-import type { Booking } from './scanners.js';
+import type { Booking, Department } from './scanners.js';
 
 export interface MendOptions {
   readonly nodeBudget?: number;
@@ -22,7 +22,10 @@ const startOf = (b: Booking): Moment => ({ date: b.date, minute: b.startMin });
 const later = (a: Moment, b: Moment): Moment => (before(a, b) ? b : a);
 
 /** Whether somebody is on the way in, or has come already, and must not be moved. */
-export function onTheWayIn(problem: MendProblem, visit: BookedVisit): boolean {
+export function onTheWayIn(
+  problem: Pick<MendProblem, 'movableFrom' | 'onTheWay'>,
+  visit: Booking,
+): boolean {
   return (
     before(startOf(visit), problem.movableFrom) || problem.onTheWay?.has(visit.requestId) === true
   );
@@ -61,6 +64,8 @@ function repair(problem: MendProblem, shorterSlots: boolean, nodeBudget: number)
   const fixed = visits.map((visit) => onTheWayIn(problem, visit));
   const place = visits.map((visit): Booking => bare(visit));
 
+  // Whoever is there already stands where they stand, even in a break or after hours (an exam that ran over).
+  for (const [v, visit] of visits.entries()) if (fixed[v]) grid.open(visit);
   if (event.kind === 'scanner down' || event.kind === 'staff gone') {
     grid.close(event.scannerId, event.date, event.fromMin, event.toMin);
   } else if (event.kind === 'team gone') {
@@ -109,8 +114,10 @@ function repair(problem: MendProblem, shorterSlots: boolean, nodeBudget: number)
     if (delayed === undefined || down) {
       stuck.push({
         requestId: visit.requestId,
-        why: `on the way in for ${at(visit)}, and cannot be served there then: speak with them on arrival`,
+        why: `on the way in for ${at(visit, department)}, and cannot be served there then: speak with them on arrival`,
       });
+      // Their booking stands until somebody has spoken with them.
+      grid.close(visit.scannerId, visit.date, visit.startMin, visit.startMin + visit.slotMin);
       continue;
     }
     if (delayed.startMin !== visit.startMin)
@@ -198,11 +205,11 @@ function described(
   };
 }
 
-function causeWords({ event }: MendProblem): string {
+function causeWords({ event, department }: MendProblem): string {
   switch (event.kind) {
     case 'scanner down':
     case 'staff gone':
-      return `${event.scannerId} ${event.kind === 'scanner down' ? 'is down' : 'has no staff'} ${clock(event.fromMin)} to ${clock(event.toMin)}`;
+      return `${scannerName(event.scannerId, department)} ${event.kind === 'scanner down' ? 'is down' : 'has no staff'} ${clock(event.fromMin)} to ${clock(event.toMin)}`;
     case 'team gone':
       return `${event.team} is away ${clock(event.fromMin)} to ${clock(event.toMin)}`;
     case 'late':
@@ -266,4 +273,7 @@ const bare = ({ requestId, scannerId, date, startMin, slotMin }: Booking): Booki
 const samePlace = (a: Booking, b: Booking) =>
   a.scannerId === b.scannerId && a.date === b.date && a.startMin === b.startMin;
 const sameBooking = (a: Booking, b: Booking) => samePlace(a, b) && a.slotMin === b.slotMin;
-const at = (b: Booking) => `${b.scannerId}, ${b.date} ${clock(b.startMin)}`;
+const scannerName = (id: string, department: Department) =>
+  department.scanners.find((s) => s.id === id)?.name ?? id;
+const at = (b: Booking, department: Department) =>
+  `${scannerName(b.scannerId, department)}, ${b.date} ${clock(b.startMin)}`;

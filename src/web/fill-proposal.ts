@@ -1,14 +1,7 @@
-import {
-  fill,
-  offersFor,
-  repeatableStream,
-  type FillProblem,
-  type FillProposal,
-  type WaitingRequest,
-} from '../day/index.js';
-import { chooseCurve } from '../planning/index.js';
+import { fill, repeatableStream, type FillProblem, type FillProposal } from '../day/index.js';
 import type { StoredBooking, StoredRequest } from '../store/index.js';
-import type { WebDeps } from './deps.js';
+import type { PageDeps } from './deps.js';
+import { breath, takenPlaces, withOffers } from './waiting-requests.js';
 
 /** Search budget of a proposal made while somebody waits for the page. */
 const iterations = 800;
@@ -18,37 +11,16 @@ const iterations = 800;
  * the steps of the search.
  */
 export async function proposeFill(
-  deps: Pick<WebDeps, 'department' | 'ground'>,
+  deps: PageDeps,
   days: readonly string[],
   waiting: readonly StoredRequest[],
   bookings: readonly StoredBooking[],
   requests: ReadonlyMap<string, StoredRequest>,
 ): Promise<{ readonly proposal: FillProposal; readonly problem: FillProblem }> {
-  const coilOf = (examId: string | undefined) => deps.ground.library.exams.get(examId ?? '')?.coil;
-  const offered: WaitingRequest[] = [];
-  for (const { body } of waiting) {
-    const { id, priority, dueDate, canCome, examId } = body;
-    offered.push({
-      ...{ id, priority, canCome, ...(dueDate === undefined ? {} : { dueDate }) },
-      coil: coilOf(examId) ?? 'unknown',
-      ...offersFor(body, deps.department.scanners, deps.ground, chooseCurve),
-    });
-    await breath();
-  }
   const problem: FillProblem = {
     department: { ...deps.department, days },
-    taken: bookings.map((b) => {
-      const coil = coilOf(requests.get(b.requestId)?.body.examId);
-      return {
-        requestId: b.requestId,
-        scannerId: b.scannerId,
-        date: b.date,
-        startMin: b.startMin,
-        slotMin: b.slotMin,
-        ...(coil === undefined ? {} : { coil }),
-      };
-    }),
-    waiting: offered,
+    taken: takenPlaces(deps, bookings, requests),
+    waiting: await withOffers(deps, waiting),
   };
   const run = fill(problem, { iterations, random: repeatableStream(1), reportEvery: 25 });
   let step = run.next();
@@ -58,6 +30,3 @@ export async function proposeFill(
   }
   return { proposal: step.value, problem };
 }
-
-/** Lets everything else that waits have its turn. */
-const breath = () => new Promise<void>((resolve) => setImmediate(resolve));

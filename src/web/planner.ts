@@ -1,5 +1,11 @@
-import type { Scanner } from '../day/index.js';
-import { planExam, type ExamRequest, type Plan, type PlanOutcome } from '../planning/index.js';
+import { offersFor, type RequestOffers, type Scanner } from '../day/index.js';
+import {
+  chooseCurve,
+  planExam,
+  type ExamRequest,
+  type Plan,
+  type PlanOutcome,
+} from '../planning/index.js';
 import { z } from 'zod';
 import { grades } from '../exams/index.js';
 import type { WebDeps } from './deps.js';
@@ -39,6 +45,7 @@ const mostKept = 400;
 /** Plans on demand and keeps the latest few hundred: the same request on the same scanner in the same slot is planned once. */
 export class Planner {
   private readonly kept = new Map<string, Promise<PlanOutcome>>();
+  private readonly offered = new Map<string, RequestOffers>();
   constructor(private readonly deps: Pick<WebDeps, 'ground' | 'department' | 'solver'>) {}
 
   plan(request: ExamRequest, scanner: Scanner, slotS = request.slotS): Promise<PlanOutcome> {
@@ -53,5 +60,18 @@ export class Planner {
     if (this.kept.size >= mostKept) this.kept.delete(this.kept.keys().next().value as string);
     this.kept.set(key, made);
     return made;
+  }
+  /** What each scanner can offer a request along the usual slot lengths: seconds for a whole week, so it is kept too. */
+  offers(request: ExamRequest): RequestOffers {
+    const key = JSON.stringify(request);
+    let offered = this.offered.get(key);
+    if (offered === undefined) {
+      const { ground, department } = this.deps;
+      offered = offersFor(request, department.scanners, ground, chooseCurve);
+      if (this.offered.size >= mostKept)
+        this.offered.delete(this.offered.keys().next().value as string);
+      this.offered.set(key, offered);
+    }
+    return offered;
   }
 }

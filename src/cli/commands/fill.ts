@@ -6,9 +6,10 @@ import {
   fill,
   offersFor,
   repeatableStream,
+  takenPlace,
+  waitingRequest,
   type FillProblem,
   type FillProposal,
-  type TakenPlace,
   type WaitingRequest,
 } from '../../day/index.js';
 import type { BookedRequest } from '../../interchange/index.js';
@@ -84,7 +85,7 @@ export function fillFile(file: string, flags: FillFlags): number {
   const missing = unknownRequests(flags.id ?? [], read, file);
   const taken = read.requests
     .filter((r) => !wanted(r) && r.booking !== undefined)
-    .map((r) => takenPlace(r, ground));
+    .map((r) => takenPlace(r.booking!, r.request.examId, ground.library));
   const problem: FillProblem = {
     department,
     taken,
@@ -107,12 +108,8 @@ export function fillFile(file: string, flags: FillFlags): number {
   return problems.length === 0 ? exitCodes.ok : exitCodes.partly;
 }
 
-const takenPlace = ({ request, booking }: BookedRequest, ground: PlanningGround): TakenPlace => {
-  const coil = ground.library.exams.get(request.examId)?.coil;
-  return { ...booking!, ...(coil === undefined ? {} : { coil }) };
-};
-
-function waitingRequests(
+/** Requests with what each scanner can offer them. */
+export function waitingRequests(
   requests: readonly BookedRequest[],
   department: Department,
   ground: PlanningGround,
@@ -120,12 +117,8 @@ function waitingRequests(
   const tell = progressLine('working out what each slot gives');
   const waiting = requests.map(({ request }, n): WaitingRequest => {
     tell(n, requests.length);
-    const { id, priority, dueDate, canCome, examId } = request;
-    return {
-      ...{ id, priority, canCome, ...(dueDate === undefined ? {} : { dueDate }) },
-      coil: ground.library.exams.get(examId)?.coil ?? 'unknown',
-      ...offersFor(request, department.scanners, ground, chooseCurve),
-    };
+    const offered = offersFor(request, department.scanners, ground, chooseCurve);
+    return waitingRequest(request, offered, ground.library);
   });
   tell(requests.length, requests.length);
   return waiting;
