@@ -3,7 +3,7 @@ import { startIn } from './fill-free.js';
 import { dateRefusal, priorityWorth, stepMin } from './fill-problem.js';
 import { freeGaps } from './gaps.js';
 import { MendGrid } from './mend-grid.js';
-import type { BookedVisit, MendOutcome, MendProblem, Move, Repair } from './mend-problem.js';
+import type { MendOutcome, MendProblem, Move, Repair } from './mend-problem.js';
 import { offerAt, rearrange, type Mover, type Rearranged } from './mend-search.js';
 import type { Booking, Department } from './scanners.js';
 
