@@ -17,6 +17,8 @@ export interface Change {
   readonly to: unknown;
   /** The change that this one put back, if it is an undo. */
   readonly undoes: number | null;
+  /** The same number on all lines of one joint change (`bookings.moveMany`). */
+  readonly joint: number | null;
 }
 
 const mostAtOnce = 1000;
@@ -77,4 +79,5 @@ export const changeFrom = (row: Selectable<ChangeRow>): Change => ({
   from: row.before === null ? null : JSON.parse(row.before),
   to: row.after === null ? null : JSON.parse(row.after),
   undoes: row.undoes,
+  joint: row.joint,
 });

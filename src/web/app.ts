@@ -12,6 +12,7 @@ import { consoleRoutes } from './routes/console.js';
 import { fillRoutes } from './routes/fill.js';
 import { libraryRoutes } from './routes/library.js';
 import { liveRoutes } from './routes/live.js';
+import { mendRoutes } from './routes/mend.js';
 import { methodsRoutes } from './routes/methods.js';
 import { owedRoutes } from './routes/owed.js';
 import { placesRoutes } from './routes/places.js';
@@ -66,6 +67,7 @@ export function createApp(given: WebDeps): Express {
   app.use(planSheetRoutes(deps));
   app.use(placesRoutes(deps));
   app.use(fillRoutes(deps));
+  app.use(mendRoutes(deps));
   app.use(owedRoutes(deps));
   app.use(consoleRoutes(deps));
   app.use(libraryRoutes(deps));

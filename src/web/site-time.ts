@@ -15,6 +15,20 @@ export function dayFrom(date: string, days: number): string {
   return DateTime.fromISO(date, { zone: 'utc' }).plus({ days }).toFormat('yyyy-MM-dd');
 }
 
+/** Mondays to Fridays among the days from a date on; the site's own closed days are not known here. */
+export function workingDays(from: string, days: number): readonly string[] {
+  return Array.from({ length: days }, (_, n) => dayFrom(from, n)).filter((day) => {
+    const weekday = new Date(`${day}T12:00:00Z`).getUTCDay();
+    return weekday !== 0 && weekday !== 6;
+  });
+}
+
+/** Minutes since the site's midnight at an instant. */
+export function siteMinute(atMs: number, zone: string): number {
+  const { hour, minute } = DateTime.fromMillis(atMs, { zone });
+  return 60 * hour + minute;
+}
+
 /** Instant of a place on the site's clock, epoch ms; in an hour that a clock change doubles, the first one. */
 export function instantOf(date: string, startMin: number, zone: string): number {
   const [year, month, day] = date.split('-').map(Number);

@@ -1,6 +1,6 @@
 import { Router } from 'express';
 import type { PageDeps } from '../deps.js';
-import { dayFrom, siteDate } from '../site-time.js';
+import { siteDate, workingDays } from '../site-time.js';
 import { bestPlaces } from '../view-models/best-places.js';
 
 /** Working days looked ahead. */
@@ -15,7 +15,9 @@ export function placesRoutes(deps: PageDeps): Router {
     const today = siteDate(deps.now(), deps.department.zone);
     const coming = deps.department.days.filter((day) => day >= today);
     const from = coming[0] ?? today;
-    const days = [...new Set([...coming, ...workingDays(from)])].sort().slice(0, daysAhead);
+    const days = [...new Set([...coming, ...workingDays(from, 2 * daysAhead)])]
+      .sort()
+      .slice(0, daysAhead);
     const bookings = await deps.store.bookings.listBetween(days[0]!, days[days.length - 1]!);
     response.render('places', {
       title: `Places for ${stored.id}`,
@@ -33,12 +35,4 @@ export function placesRoutes(deps: PageDeps): Router {
     });
   });
   return router;
-}
-
-/** Monday to Friday from a day on; the site's own closed days are not known here. */
-function workingDays(from: string): readonly string[] {
-  return Array.from({ length: 2 * daysAhead }, (_, n) => dayFrom(from, n)).filter((day) => {
-    const weekday = new Date(`${day}T12:00:00Z`).getUTCDay();
-    return weekday !== 0 && weekday !== 6;
-  });
 }

@@ -1,0 +1,147 @@
+import { clock, type Booking, type Repair } from '../../day/index.js';
+import type { StoredRequest } from '../../store/index.js';
+import { acceptField, type AcceptField } from '../mend-changes.js';
+import type { MendProposal } from '../mend-proposal.js';
+import {
+  disturbanceWords,
+  people,
+  placeWords,
+  scannerName,
+  sentence,
+  shiftWords,
+  slotWords,
+} from './mend-words.js';
+
+/** Somebody in a proposal: who, then what, a sentence or two. */
+export interface MendPerson {
+  readonly requestId: string;
+  readonly exam: string;
+  readonly words: readonly string[];
+}
+
+export interface MendGroup {
+  readonly heading: string;
+  readonly people: readonly MendPerson[];
+}
+
+export interface MendView {
+  readonly heading: string;
+  readonly summary: string;
+  readonly proof: string;
+  readonly groups: readonly MendGroup[];
+  /** What accepting sends; empty when there is nothing to accept. */
+  readonly fields: readonly AcceptField[];
+  readonly accept: string;
+}
+
+/** The proposals of a mended day in words, each with what accepting it sends. */
+export function mendViews(
+  proposal: MendProposal,
+  requests: ReadonlyMap<string, StoredRequest>,
+  examName: (examId: string) => string,
+  day: string,
+): readonly MendView[] {
+  const { outcome } = proposal;
+  const person = (requestId: string, ...words: readonly string[]): MendPerson => ({
+    requestId,
+    exam: examName(requests.get(requestId)?.body.examId ?? ''),
+    words,
+  });
+  return outcome.proposals.map((repair, n) => ({
+    heading:
+      outcome.proposals.length === 1
+        ? 'Proposal'
+        : n === 0
+          ? 'First proposal: nobody loses an answer'
+          : 'Second proposal: shorter slots, fewer people disturbed, some answers lost',
+    summary: disturbanceWords(repair),
+    proof: repair.fewest
+      ? 'Proved: no other way of this kind leaves fewer people without a place or moves fewer.'
+      : 'Not proved: the search stopped at its limit, and a way that moves fewer people may exist.',
+    groups: groupsOf(repair, proposal, day, person),
+    fields: fieldsOf(repair, proposal, requests),
+    accept: acceptWords(repair),
+  }));
+}
+
+function groupsOf(
+  repair: Repair,
+  { problem: { department }, bookings }: MendProposal,
+  day: string,
+  person: (requestId: string, ...words: readonly string[]) => MendPerson,
+): readonly MendGroup[] {
+  const at = (b: Booking) => placeWords(b, department, day);
+  const moves = repair.moves.map((m) =>
+    person(
+      m.requestId,
+      m.from === undefined
+        ? `Gets ${at(m.to)}, ${m.to.slotMin} minutes.`
+        : `From ${at(m.from)} to ${at(m.to)}: ${shiftWords(m.from, m.to)}${slotWords(m.from, m.to)}.`,
+      sentence(m.answers),
+      m.from === undefined ? '' : `Why: ${sentence(m.because)}`,
+    ),
+  );
+  const waits = repair.waitOnSite.map(({ requestId, from, to }) =>
+    person(
+      requestId,
+      `On the way in or here already: begins at ${clock(to.startMin)} instead of ${clock(from.startMin)} on ${scannerName(to.scannerId, department)}, ${shiftWords(from, to)}.`,
+    ),
+  );
+  const without = repair.withoutPlace.map(({ requestId, why }) =>
+    person(
+      requestId,
+      sentence(why),
+      bookings.has(requestId) ? 'Comes off the board, and the request waits again.' : '',
+    ),
+  );
+  return [
+    { heading: 'Who moves', people: moves },
+    { heading: 'Who is here and must wait', people: waits },
+    {
+      heading: 'Who must be spoken with',
+      people: repair.stuck.map((s) =>
+        person(s.requestId, sentence(s.why), 'The booking stays as it is until then.'),
+      ),
+    },
+    { heading: 'Who is left without a place', people: without },
+  ].filter((g) => g.people.length > 0);
+}
+
+/** Everything that accepting changes, with the versions that were seen. */
+function fieldsOf(
+  repair: Repair,
+  { problem: { event }, bookings }: MendProposal,
+  requests: ReadonlyMap<string, StoredRequest>,
+): readonly AcceptField[] {
+  const over = event.kind === 'overrun' ? bookings.get(event.requestId) : undefined;
+  const moved = (name: 'move' | 'wait', requestId: string, to: Booking) =>
+    [bookings.get(requestId)].flatMap((b) => (b === undefined ? [] : [acceptField(name, b, to)]));
+  const placed = (requestId: string, to: Booking) =>
+    [requests.get(requestId)].flatMap((r) =>
+      r === undefined ? [] : [acceptField('place', r, to)],
+    );
+  return [
+    ...repair.moves.flatMap((m) =>
+      m.from === undefined ? placed(m.requestId, m.to) : moved('move', m.requestId, m.to),
+    ),
+    ...repair.waitOnSite.flatMap((w) => moved('wait', w.requestId, w.to)),
+    ...repair.withoutPlace.flatMap(({ requestId }) =>
+      [bookings.get(requestId)].flatMap((b) => (b === undefined ? [] : [acceptField('cancel', b)])),
+    ),
+    ...(over !== undefined && event.kind === 'overrun'
+      ? [acceptField('longer', over, { ...over, slotMin: over.slotMin + event.minutes })]
+      : []),
+  ];
+}
+
+function acceptWords(repair: Repair): string {
+  const booked = repair.moves.filter((m) => m.from !== undefined).length + repair.waitOnSite.length;
+  const placed = repair.moves.length - repair.moves.filter((m) => m.from !== undefined).length;
+  const off = repair.withoutPlace.length;
+  const parts = [
+    ...(booked > 0 ? [`move ${people(booked)}`] : []),
+    ...(placed > 0 ? ['place the emergency'] : []),
+    ...(off > 0 ? [`take ${people(off)} off the board`] : []),
+  ];
+  return parts.length === 0 ? 'Accept: make the slot longer' : `Accept: ${parts.join(', ')}`;
+}

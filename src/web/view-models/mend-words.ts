@@ -1,0 +1,57 @@
+import { clock, type Booking, type Department, type Repair } from '../../day/index.js';
+
+export const scannerName = (id: string, department: Department): string =>
+  department.scanners.find((s) => s.id === id)?.name ?? id;
+
+/** "10:40 on Scanner 2", with the day where it is another than the one looked at. */
+export const placeWords = (place: Booking, department: Department, day: string): string =>
+  `${place.date === day ? '' : `${place.date} `}${clock(place.startMin)} on ${scannerName(place.scannerId, department)}`;
+
+/** Minutes as people say them: "50 minutes", "2 h 30 min". */
+export const spanWords = (minutes: number): string =>
+  minutes < 60
+    ? `${minutes} minutes`
+    : `${Math.floor(minutes / 60)} h${minutes % 60 === 0 ? '' : ` ${minutes % 60} min`}`;
+
+/** By how much a start moves. */
+export function shiftWords(from: Booking, to: Booking): string {
+  if (from.date !== to.date) return to.date > from.date ? 'a later day' : 'an earlier day';
+  const by = to.startMin - from.startMin;
+  return by === 0 ? 'same time' : `${spanWords(Math.abs(by))} ${by > 0 ? 'later' : 'earlier'}`;
+}
+
+/** A change of the slot, if there is one. */
+export const slotWords = (from: Booking, to: Booking): string =>
+  from.slotMin === to.slotMin ? '' : `, slot of ${to.slotMin} minutes instead of ${from.slotMin}`;
+
+export const people = (n: number): string => (n === 1 ? '1 person' : `${n} people`);
+
+/** A sentence of its own: capital first, full stop last. */
+export const sentence = (text: string): string =>
+  `${text.slice(0, 1).toUpperCase()}${text.slice(1)}${/[.!?]$/.test(text) ? '' : '.'}`;
+
+/** How much a proposal disturbs, in one sentence. */
+export function disturbanceWords(repair: Repair): string {
+  const { withoutPlace, waitOnSite, stuck } = repair;
+  const pairs = repair.moves.flatMap(({ from, to }) => (from === undefined ? [] : [{ from, to }]));
+  const otherDay = pairs.filter(({ from, to }) => from.date !== to.date).length;
+  const most = Math.max(
+    0,
+    ...pairs
+      .filter(({ from, to }) => from.date === to.date)
+      .map(({ from, to }) => Math.abs(to.startMin - from.startMin)),
+  );
+  const parts = [
+    ...(pairs.length === 0
+      ? ['nobody who is booked has to move']
+      : [
+          `${people(pairs.length)} ${pairs.length === 1 ? 'moves' : 'move'}` +
+            (most > 0 ? `, by ${pairs.length === 1 ? '' : 'at most '}${spanWords(most)}` : '') +
+            (otherDay > 0 ? `, ${otherDay} to another day` : ''),
+        ]),
+    ...(waitOnSite.length > 0 ? [`${people(waitOnSite.length)} on site must wait`] : []),
+    ...(stuck.length > 0 ? [`${people(stuck.length)} must be spoken with`] : []),
+    ...(withoutPlace.length > 0 ? [`${people(withoutPlace.length)} left without a place`] : []),
+  ];
+  return sentence(parts.join('; '));
+}
