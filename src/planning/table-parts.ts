@@ -53,7 +53,7 @@ export function candidateTime(candidate: Candidate, policy: SitePolicy): Distrib
   return sequenceTime({
     acquisitionS: time.acquisitionS,
     idleS: policy.time.idleBetweenS.value,
-    repeatChance: clean.retakes === 'whole' ? clean.spoiledPiece : 0,
+    repeatChance: clean.retakes === 'whole' ? 1 - clean.clean : 0,
     ...(clean.retakes === 'pieces'
       ? {
           retake: {

@@ -12,6 +12,8 @@ export interface Visit {
   readonly order: number;
   /** Number of the team that must be there throughout; -1: none. */
   readonly team: number;
+  /** Staff it takes: 1, or 0 for a standstill. */
+  readonly staff: number;
 }
 
 export interface DayRules {
@@ -68,23 +70,23 @@ export function serveDay(
     if (now === Infinity) break;
     while (ends.nextMin <= now) {
       const s = ends.pop();
-      const { team } = visits[running[s]!]!;
+      const { team, staff } = visits[running[s]!]!;
       if (team >= 0) teamsFree[team]! += 1;
-      staffFree += 1;
+      staffFree += staff;
       running[s] = -1;
     }
     while (arrivals.nextMin <= now) waiting.push(arrivals.pop());
     while (reopenings.nextMin <= now) reopenings.pop();
-    for (let s = 0; s < rules.scanners && waiting.length > 0 && staffFree > 0; s++) {
+    for (let s = 0; s < rules.scanners && waiting.length > 0; s++) {
       if (running[s]! >= 0 || now >= rules.lastStartMin[s]! || isClosed(s, now)) continue;
       const at = firstFor(s);
       if (at < 0) continue;
       const v = waiting[at]!;
       waiting[at] = waiting[waiting.length - 1]!;
       waiting.pop();
-      const { team } = visits[v]!;
+      const { team, staff } = visits[v]!;
       if (team >= 0) teamsFree[team]! -= 1;
-      staffFree -= 1;
+      staffFree -= staff;
       running[s] = v;
       const endMin = now + serve(v, s, now);
       served.startMin[v] = now;
@@ -102,6 +104,7 @@ export function serveDay(
       const v = waiting[i]!;
       const visit = visits[v]!;
       if (visit.scanner >= 0 ? visit.scanner !== s : ((visit.able >> s) & 1) === 0) continue;
+      if (visit.staff > staffFree) continue;
       if (visit.team >= 0 && teamsFree[visit.team]! <= 0) continue;
       if (best < 0) best = i;
       else {

@@ -101,7 +101,7 @@ describe('one scanner against queueing theory', () => {
     const visits: Visit[] = [];
     let clock = 0;
     for (let i = 0; i < patients; i++) {
-      visits.push({ readyMin: clock, scanner: 0, able: 1, order: i, team: -1 });
+      visits.push({ readyMin: clock, scanner: 0, able: 1, order: i, team: -1, staff: 1 });
       clock += gap();
     }
     const { startMin } = serveDay(visits, oneScanner, service);
@@ -160,7 +160,7 @@ describe('one scanner against queueing theory', () => {
 
 describe('several scanners, teams, closing', () => {
   const visit = (readyMin: number, more: Partial<Visit> = {}): Visit => ({
-    ...{ readyMin, scanner: -1, able: 0b11, order: 0, team: -1 },
+    ...{ readyMin, scanner: -1, able: 0b11, order: 0, team: -1, staff: 1 },
     ...more,
   });
   const rules = {

@@ -1,0 +1,15 @@
+export * from './scenario.js';
+export * from './kinds.js';
+export * from './check-scenario.js';
+export * from './usual-scenario.js';
+export { PlanBook, slotsMin } from './plan-book.js';
+export { shortestBest, workOut, type WorkedOut } from './work-out.js';
+export type { SlotPlan } from './run-plan.js';
+export type { SimDepartment } from './sim-department.js';
+export { simulateMonth } from './month.js';
+export type { Measure, MonthRecord } from './month-record.js';
+export * from './measure-words.js';
+export * from './estimate.js';
+export * from './findings.js';
+export * from './compare.js';
+export * from './slot-advice.js';

@@ -1,0 +1,77 @@
+import type { SitePolicy } from '../exams/index.js';
+import type { ExamRequest, PlanningGround } from '../planning/index.js';
+import type { ScannerAbilities } from '../sequences/index.js';
+import { fullProtocol, slotPlans, type SlotPlan } from './run-plan.js';
+
+/** Slot lengths the month plans with, minutes. */
+export const slotsMin: readonly number[] = Array.from({ length: 17 }, (_, n) => 10 + 5 * n);
+
+/** The same policy with quick looks taken out: single-shot stands only where a signed entry accepts it as diagnostic. */
+export function withoutQuickLooks(policy: SitePolicy): SitePolicy {
+  const { otherwise, entries } = policy.catalogue;
+  return {
+    ...policy,
+    catalogue: {
+      otherwise: { ...otherwise, 'single-shot': { ...otherwise['single-shot'], value: 'none' } },
+      entries: entries.filter((e) => e.family !== 'single-shot' || e.atMost === 'diagnostic'),
+    },
+  };
+}
+
+/** What each slot length is used for, per kind of request and scanner: worked out once, whichever scenario asks first. */
+export class PlanBook {
+  private readonly plans = new Map<string, ReturnType<typeof slotPlans>>();
+  private readonly full = new Map<string, ReturnType<typeof fullProtocol>>();
+  private readonly strict: PlanningGround;
+
+  constructor(private readonly ground: PlanningGround) {
+    const { library } = ground;
+    this.strict = {
+      ...ground,
+      library: { ...library, policy: withoutQuickLooks(library.policy) },
+    };
+  }
+
+  /** Plans along `slotsMin`; undefined where the scanner cannot take it. */
+  plansFor(
+    request: ExamRequest,
+    scanner: ScannerAbilities,
+    quickLooks: boolean,
+  ): readonly SlotPlan[] | undefined {
+    const key = `${quickLooks}|${keyOf(request, scanner)}`;
+    let found = this.plans.get(key);
+    if (found === undefined) {
+      found = slotPlans(request, scanner, quickLooks ? this.ground : this.strict, slotsMin, {
+        quickLooks,
+      });
+      this.plans.set(key, found);
+    }
+    return 'cannot' in found ? undefined : found;
+  }
+
+  fullFor(request: ExamRequest, scanner: ScannerAbilities): SlotPlan | undefined {
+    const key = keyOf(request, scanner);
+    let found = this.full.get(key);
+    if (found === undefined) {
+      found = fullProtocol(request, scanner, this.ground);
+      this.full.set(key, found);
+    }
+    return 'cannot' in found ? undefined : found;
+  }
+}
+
+/** What a plan depends on: not the number, the day or the note of a request, nor a scanner's name. */
+function keyOf(request: ExamRequest, scanner: ScannerAbilities): string {
+  const { examId, questionIds, tolerance, contrast, transport, b1RmsLimitMicroTesla } = request;
+  return JSON.stringify([
+    examId,
+    questionIds,
+    tolerance,
+    contrast,
+    transport,
+    b1RmsLimitMicroTesla ?? null,
+    scanner.fieldT,
+    scanner.boreCm,
+    scanner.coils,
+  ]);
+}
