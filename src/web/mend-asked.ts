@@ -56,6 +56,8 @@ export interface MendAsked {
 }
 
 const onTheWayMin = 60;
+/** Somebody called in from a ward for a place that fell free. */
+const calledInMin = 30;
 const lastMinute = 24 * 60 - 1;
 const longestMin = 480;
 const mostDays = 14;
@@ -113,7 +115,7 @@ export function readMend(
   const fromMin = time('from', 'From', running ?? opens + 120);
   const toMin = time('to', 'To', Math.min(fromMin + 120, lastMinute));
   const nowMin = time('now', 'It is now', running ?? booking?.startMin ?? fromMin);
-  const usual = Math.min(nowMin + onTheWayMin, lastMinute);
+  const usual = Math.min(nowMin + (what === 'no-show' ? calledInMin : onTheWayMin), lastMinute);
   const given = time('before', 'People who start before', usual);
   const beforeMin = given < nowMin ? usual : given;
   const last = department.days[department.days.length - 1] ?? day;

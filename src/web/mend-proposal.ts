@@ -81,6 +81,19 @@ export async function proposeMend(
   };
 }
 
+/** Works out beforehand what the booked people could get elsewhere: seconds that nobody then waits for. */
+export async function lookAhead(
+  deps: PageDeps,
+  days: readonly string[],
+  requests: ReadonlyMap<string, StoredRequest>,
+): Promise<void> {
+  const booked = await deps.store.bookings.listBetween(days[0]!, days[days.length - 1]!);
+  await withOffers(
+    deps,
+    booked.flatMap((b) => requests.get(b.requestId) ?? []),
+  );
+}
+
 /** Bookings whose patient has come: arrived, at the scanner by its taps, or done. */
 async function alreadyThere(
   { store }: PageDeps,

@@ -5,13 +5,13 @@ import type { StoredBooking } from '../../store/index.js';
 import type { PageDeps } from '../deps.js';
 import { readMend, befallsPatient, type AskedEvent, type MendAsked } from '../mend-asked.js';
 import { acceptMend, valuesOf } from '../mend-changes.js';
-import { proposeMend, type MendProposal } from '../mend-proposal.js';
+import { lookAhead, proposeMend, type MendProposal } from '../mend-proposal.js';
 import { siteDate, siteMinute } from '../site-time.js';
 import { takeTold, tell, type Told } from '../told.js';
 import { mendDone } from '../view-models/mend-done.js';
 import { mendForm } from '../view-models/mend-form.js';
 import { mendViews } from '../view-models/mend-page.js';
-import { placeWords } from '../view-models/mend-words.js';
+import { placeWords, scannerName } from '../view-models/mend-words.js';
 import { whoIs } from '../who.js';
 
 /** Something happened to a day: what it does to whom, proposals that mend it, and accepting one. */
@@ -60,6 +60,9 @@ export function mendRoutes(deps: PageDeps): Router {
     const requests = new Map((await store.requests.list()).map((r) => [r.id, r]));
     const problems: Problem[] = [...asked.problems];
     const made = await proposed();
+    // Offers are kept by the planner: while the form is filled in, they are worked out.
+    if (asked.what !== undefined && made === undefined)
+      lookAhead(deps, asked.days, requests).catch(() => deps.log('looking ahead failed'));
     const joint = Number(query['done'] ?? 'x');
     const examOf = (id: string) => examName(requests.get(id)?.body.examId ?? '');
     const done = Number.isInteger(joint)
@@ -76,7 +79,7 @@ export function mendRoutes(deps: PageDeps): Router {
     response
       .status(message?.kind === 'refused' ? 409 : problems.length > 0 ? 422 : 200)
       .render('mend', {
-        title: 'Something happened',
+        title: 'Mend a day',
         form: mendForm({ asked, department, bookings, requests, examName }),
         address: request.originalUrl,
         problems,
@@ -111,7 +114,7 @@ export function mendRoutes(deps: PageDeps): Router {
       return {
         requestId: gone.requestId,
         exam: examOf(gone.requestId),
-        place: `${placeWords(place, department, asked.day)} to ${clock(place.startMin + place.slotMin)}`,
+        place: `${clock(place.startMin)} to ${clock(place.startMin + place.slotMin)} on ${scannerName(place.scannerId, department)}`,
         marked: gone.status === 'noshow',
         value: `${gone.id}|${gone.version}`,
         couldCome: couldCome

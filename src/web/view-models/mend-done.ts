@@ -2,7 +2,7 @@ import { z } from 'zod';
 import type { Booking, Department } from '../../day/index.js';
 import type { Change } from '../../store/index.js';
 import type { MendPerson } from './mend-page.js';
-import { placeWords, shiftWords, slotWords } from './mend-words.js';
+import { moveWords, placeWords, sentence, shiftWords, slotWords } from './mend-words.js';
 
 const image = z.object({
   requestId: z.string(),
@@ -54,8 +54,10 @@ function saidOf(
   department: Department,
 ): string {
   const at = (b: Booking) => placeWords(b, department, '');
-  if (action === 'cancelled') return `Was ${at(to)}; has no place any more and waits again.`;
+  if (action === 'cancelled') return `Had ${at(to)}; has no place any more and waits again.`;
   if (from === undefined) return `Has ${at(to)} now, ${to.slotMin} minutes.`;
   if (action === 'resized') return `Keeps ${at(to)}${slotWords(from, to)}.`;
-  return `Was ${at(from)}, is now ${at(to)}: ${shiftWords(from, to)}${slotWords(from, to)}.`;
+  return sentence(
+    `${moveWords(from, to, department, '')}: ${shiftWords(from, to)}${slotWords(from, to)}`,
+  );
 }

@@ -78,6 +78,8 @@ export function mendForm(input: {
       request: what === 'emergency',
       until: what !== 'no-show',
     },
+    beforeWords: what === 'no-show' ? 'Nobody else can be here before' : 'People who start before',
+    afterWords: what === 'no-show' ? '' : 'are on their way in and are not moved.',
     scanners: department.scanners.map((s): Choice => ({ value: s.id, label: s.name })),
     teams: teams.map((t): Choice => ({ value: t, label: t })),
     bookings: bookings

@@ -4,6 +4,7 @@ import { acceptField, type AcceptField } from '../mend-changes.js';
 import type { MendProposal } from '../mend-proposal.js';
 import {
   disturbanceWords,
+  moveWords,
   people,
   placeWords,
   scannerName,
@@ -71,15 +72,23 @@ function groupsOf(
   person: (requestId: string, ...words: readonly string[]) => MendPerson,
 ): readonly MendGroup[] {
   const at = (b: Booking) => placeWords(b, department, day);
-  const moves = repair.moves.map((m) =>
-    person(
-      m.requestId,
-      m.from === undefined
-        ? `Gets ${at(m.to)}, ${m.to.slotMin} minutes.`
-        : `From ${at(m.from)} to ${at(m.to)}: ${shiftWords(m.from, m.to)}${slotWords(m.from, m.to)}.`,
-      sentence(m.answers),
-      m.from === undefined ? '' : `Why: ${sentence(m.because)}`,
-    ),
+  const moves = repair.moves.flatMap(({ requestId, from, to, answers, because }) =>
+    from === undefined
+      ? []
+      : [
+          person(
+            requestId,
+            sentence(
+              `${moveWords(from, to, department, day)}: ${shiftWords(from, to)}${slotWords(from, to)}`,
+            ),
+            `${sentence(answers)} Why: ${sentence(because)}`,
+          ),
+        ],
+  );
+  const emergency = repair.moves.flatMap(({ requestId, from, to, answers }) =>
+    from === undefined
+      ? [person(requestId, `At ${at(to)}, ${to.slotMin} minutes.`, sentence(answers))]
+      : [],
   );
   const waits = repair.waitOnSite.map(({ requestId, from, to }) =>
     person(
@@ -95,6 +104,7 @@ function groupsOf(
     ),
   );
   return [
+    { heading: 'Where the emergency goes', people: emergency },
     { heading: 'Who moves', people: moves },
     { heading: 'Who is here and must wait', people: waits },
     {
@@ -135,12 +145,14 @@ function fieldsOf(
 }
 
 function acceptWords(repair: Repair): string {
-  const booked = repair.moves.filter((m) => m.from !== undefined).length + repair.waitOnSite.length;
-  const placed = repair.moves.length - repair.moves.filter((m) => m.from !== undefined).length;
+  const booked = repair.moves.filter((m) => m.from !== undefined).length;
+  const placed = repair.moves.length - booked;
+  const waits = repair.waitOnSite.length;
   const off = repair.withoutPlace.length;
   const parts = [
     ...(booked > 0 ? [`move ${people(booked)}`] : []),
     ...(placed > 0 ? ['place the emergency'] : []),
+    ...(waits > 0 ? [`let ${people(waits)} wait`] : []),
     ...(off > 0 ? [`take ${people(off)} off the board`] : []),
   ];
   return parts.length === 0 ? 'Accept: make the slot longer' : `Accept: ${parts.join(', ')}`;

@@ -7,6 +7,17 @@ export const scannerName = (id: string, department: Department): string =>
 export const placeWords = (place: Booking, department: Department, day: string): string =>
   `${place.date === day ? '' : `${place.date} `}${clock(place.startMin)} on ${scannerName(place.scannerId, department)}`;
 
+/** From one place to another: the scanner once where it stays the same. */
+export const moveWords = (
+  from: Booking,
+  to: Booking,
+  department: Department,
+  day: string,
+): string =>
+  from.scannerId === to.scannerId && from.date === to.date
+    ? `from ${clock(from.startMin)} to ${placeWords(to, department, day)}`
+    : `from ${placeWords(from, department, day)}, to ${placeWords(to, department, day)}`;
+
 /** Minutes as people say them: "50 minutes", "2 h 30 min". */
 export const spanWords = (minutes: number): string =>
   minutes < 60
