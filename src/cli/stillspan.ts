@@ -4,6 +4,8 @@ import { ProblemError } from '../shared/index.js';
 import { addCurveCommand } from './commands/curve.js';
 import { addFillCommand } from './commands/fill.js';
 import { addLibraryCommand } from './commands/library.js';
+import { addMendCommand } from './commands/mend.js';
+import { addMonthCommand } from './commands/month.js';
 import { addPhysicsCommands } from './commands/physics.js';
 import { addPlanCommand } from './commands/plan.js';
 import { addSequenceCommand } from './commands/sequence.js';
@@ -22,6 +24,8 @@ const program = new Command('stillspan')
 addPlanCommand(program);
 addCurveCommand(program);
 addFillCommand(program);
+addMendCommand(program);
+addMonthCommand(program);
 addSequenceCommand(program);
 addLibraryCommand(program);
 addPhysicsCommands(program);

@@ -9,7 +9,7 @@ export { choiceProblem } from './choice-problem.js';
 export { runningOrder, type OrderedStep } from './running-order.js';
 export { exitTime, type FixedTime } from './table-parts.js';
 export { chooseCurve, chooseExactly } from './solver/exact.js';
-export { atSeconds, meanS, quantileS, type Distribution } from './distribution.js';
+export { atSeconds, meanS, mixture, quantileS, type Distribution } from './distribution.js';
 export { chosenByView } from './explain.js';
 export { judgeChoice, type Choice, type ChoiceProblem } from './solver/problem.js';
 export { stillnessWords } from './plan-exam.js';

@@ -41,7 +41,7 @@ export function compareRuns(runs: readonly ScenarioRun[], stopped = false): Comp
         ...run,
         estimates,
         differences,
-        findings: findingsOf(run.name, first.name, differences, days),
+        findings: findingsOf(differences, days),
       };
     }),
   };

@@ -30,37 +30,25 @@ const spoken: readonly Measure[] = [
  *
  * @param days working days both were simulated for
  */
-export function findingsOf(
-  name: string,
-  against: string,
-  differences: Estimates,
-  days: number,
-): readonly Finding[] {
+export function findingsOf(differences: Estimates, days: number): readonly Finding[] {
   const found = spoken.map((measure): Finding => {
     const { better } = measureWords[measure];
     const difference = differences[measure];
     const verdict = verdictOf(difference, better);
-    return { measure, verdict, sentence: sentenceOf(measure, difference, verdict) };
+    return { measure, verdict, sentence: sentenceOf(measure, difference) };
   });
   const unchanged = found.filter((f) => f.verdict === 'unchanged');
   const changed = found.filter((f) => f.verdict !== 'unchanged');
-  const start = (finding: Finding) => ({
-    ...finding,
-    sentence: `${name} against ${against}: ${finding.sentence}`,
-  });
-  const rest: readonly Finding[] =
-    unchanged.length === 0
-      ? []
-      : [
-          {
-            measure: unchanged[0]!.measure,
-            verdict: 'unchanged',
-            sentence: `Unchanged within what ${days} days can tell: ${unchanged
-              .map((f) => lower(measureWords[f.measure].name))
-              .join('; ')}.`,
-          },
-        ];
-  return [...changed.map(start), ...rest];
+  if (unchanged.length === 0) return changed;
+  const names = unchanged.map((f) => lowered(measureWords[f.measure].name)).join('; ');
+  return [
+    ...changed,
+    {
+      measure: unchanged[0]!.measure,
+      verdict: 'unchanged',
+      sentence: `Unchanged within what ${days} days can tell: ${names}.`,
+    },
+  ];
 }
 
 function verdictOf({ low, high, mean }: Estimate, better: string): Finding['verdict'] {
@@ -69,17 +57,13 @@ function verdictOf({ low, high, mean }: Estimate, better: string): Finding['verd
   return mean > 0 === (better === 'more') ? 'better' : 'worse';
 }
 
-function sentenceOf(measure: Measure, { mean, low, high }: Estimate, verdict: string): string {
-  const { name, unit } = measureWords[measure];
+function sentenceOf(measure: Measure, { mean, low, high }: Estimate): string {
+  const { change } = measureWords[measure];
   const size = (value: number) => measureFigure(measure, Math.abs(value));
-  const [near, far] = mean > 0 ? [low, high] : [-high, -low];
-  const units = unit === '%' ? 'percentage points' : unit;
-  const word = mean > 0 ? 'more' : 'fewer';
-  const direction =
-    unit === 'a day' || unit === 'requests'
-      ? `${size(mean)} ${word}${unit === 'a day' ? ' a day' : ''}`
-      : `${size(mean)} ${units} ${mean > 0 ? 'more' : 'less'}`;
-  return `${lower(name)}: ${direction} (${size(near)} to ${size(far)})${verdict === 'worse' ? ', which is worse' : ''}.`;
+  const [near, far] = mean > 0 ? [low, high] : [high, low];
+
+  const words = `${change[0]} ${size(mean)} ${mean > 0 ? 'more' : 'fewer'} ${change[1]}`;
+  return `${words.charAt(0).toUpperCase()}${words.slice(1)} (${size(near)} to ${size(far)}).`;
 }
 
-const lower = (text: string) => text.charAt(0).toLowerCase() + text.slice(1);
+const lowered = (text: string) => text.charAt(0).toLowerCase() + text.slice(1);

@@ -13,3 +13,4 @@ export * from './estimate.js';
 export * from './findings.js';
 export * from './compare.js';
 export * from './slot-advice.js';
+export * from './advice-table.js';

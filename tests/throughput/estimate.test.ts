@@ -83,13 +83,13 @@ describe('findings', () => {
   it('say better, worse and what the days cannot tell', () => {
     const before = [record(50, 10), record(51, 12), record(49, 11)];
     const after = [record(52, 20), record(53.1, 22.5), record(51.2, 21)];
-    const [more, worse, rest] = findingsOf('New', 'Old', differencesOf(after, before), 60);
+    const [more, worse, rest] = findingsOf(differencesOf(after, before), 60);
     expect(more!.verdict).toBe('better');
     expect(more!.sentence).toMatch(
-      /^New against Old: questions answered diagnostically: 2\.1 more a day \(1\.\d to 2\.\d\)\.$/,
+      /^Answers 2\.1 more questions diagnostically a day \(1\.\d to 2\.\d\)\.$/,
     );
     expect(worse!.verdict).toBe('worse');
-    expect(worse!.sentence).toContain('which is worse');
+    expect(worse!.sentence).toMatch(/^Needs 10\.2 more minutes of overtime a day/);
     expect(rest!.sentence).toMatch(/^Unchanged within what 60 days can tell: patients served/);
   });
 

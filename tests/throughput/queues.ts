@@ -24,6 +24,7 @@ export function queued(arrivals: readonly number[], services: readonly number[])
     able: 1,
     order,
     team: -1,
+    staff: 1,
   }));
   const { startMin, endMin } = serveDay(visits, oneScanner, (v) => services[v]!);
   const makespan = endMin.reduce((a, b) => Math.max(a, b), 0);

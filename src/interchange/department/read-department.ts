@@ -14,7 +14,8 @@ const stretch = z
   .refine((s) => s.to > s.from, { message: 'must end after it starts' })
   .transform((s) => ({ fromMin: s.from, toMin: s.to }));
 
-const scanner = z.strictObject({
+/** A scanner as a department file or a scenario file gives it. */
+export const scannerEntry = z.strictObject({
   id: z.string().regex(/^[A-Za-z0-9-]+$/, 'letters, figures and hyphens'),
   name: z.string().min(1),
   fieldT: z.union([z.literal(1.5), z.literal(3)]),
@@ -30,7 +31,7 @@ const departmentFile = z.strictObject({
     message: 'an IANA time zone such as Europe/Dublin',
   }),
   days: z.array(z.iso.date()).min(1),
-  scanners: z.array(scanner).min(1),
+  scanners: z.array(scannerEntry).min(1),
 });
 
 /** A department from its text file; every fault is named with its line. */

@@ -1,0 +1,61 @@
+import colour from 'picocolors';
+import {
+  measureFigure,
+  measureWords,
+  type Comparison,
+  type Measure,
+} from '../../throughput/index.js';
+import { wrapped } from './layout.js';
+
+const measures = Object.keys(measureWords) as Measure[];
+
+/** A comparison for an 80-column terminal: figures with limits, then what changes in words. */
+export function monthText({ scenarios, days, stopped }: Comparison): string {
+  const lines: string[] = [];
+  if (stopped) lines.push(colour.bold('Stopped early: what follows rests on the months done.'), '');
+  lines.push(
+    wrapped(
+      `${days} working days each, the same patients for all. Every figure with its 95 % limits.`,
+      '',
+    ),
+  );
+  scenarios.forEach(({ name, estimates, findings, leftOut }, n) => {
+    lines.push('', colour.bold(`${n + 1}. ${name}`));
+    for (const measure of measures) {
+      const { name: what, unit } = measureWords[measure];
+      const { mean, low, high } = estimates[measure];
+      const [m, l, h] = [mean, low, high].map((v) => measureFigure(measure, v));
+      lines.push(`   ${what.padEnd(38)} ${m!.padStart(7)} ${unit.padEnd(9)} (${l} to ${h})`);
+    }
+    if (findings.length > 0)
+      lines.push('', `   Against "${scenarios[0]!.name}" (+ better, - worse, = neither)`);
+    for (const { sentence, verdict } of findings) {
+      const mark = verdict === 'better' ? '+' : verdict === 'worse' ? '-' : '=';
+      lines.push(wrapped(sentence, `   ${mark} `, '     '));
+    }
+    if (leftOut.length > 0)
+      lines.push(wrapped(`No scanner can take: ${leftOut.join('; ')}.`, '   ! ', '     '));
+  });
+  return lines.join('\n');
+}
+
+/** One row a scenario and measure: spreadsheets read it. */
+export function monthCsv({ scenarios, days }: Comparison): string {
+  const quoted = (text: string) => `"${text.replaceAll('"', '""')}"`;
+  const rows = scenarios.flatMap(({ name, estimates, differences }) =>
+    measures.map((measure) => {
+      const { name: what, unit } = measureWords[measure];
+      const figures = [estimates[measure], differences?.[measure]].flatMap((e) =>
+        e === undefined
+          ? ['', '', '']
+          : [e.mean, e.low, e.high].map((v) =>
+              Number.isFinite(v) ? String(v * measureWords[measure].times) : '',
+            ),
+      );
+      return [quoted(name), quoted(what), quoted(unit), days, ...figures].join(',');
+    }),
+  );
+  const header =
+    'scenario,measure,unit,days,mean,low_95,high_95,difference_from_first,difference_low_95,difference_high_95';
+  return [header, ...rows].join('\r\n');
+}

@@ -1,0 +1,2 @@
+export { readScenarios } from './read-scenarios.js';
+export { storedScenario } from './scenario-schema.js';
