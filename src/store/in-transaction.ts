@@ -11,7 +11,7 @@ export interface Author {
 }
 
 export interface NewChange {
-  readonly what: 'request' | 'booking' | 'owed' | 'answer' | 'console';
+  readonly what: 'request' | 'booking' | 'owed' | 'answer' | 'console' | 'scenario';
   readonly id: string;
   readonly action: string;
   readonly from?: unknown;

@@ -5,6 +5,7 @@ export type { AddOutcome, RequestOutcome, RequestPatch } from './requests.js';
 export { happeningSchema, type Tap, type TapOutcome } from './console-log.js';
 export type { Move, NewBooking } from './placing.js';
 export type { ManyChange, ManyOutcome } from './move-many.js';
+export type { ScenarioOutcome, StoredScenario } from './scenarios.js';
 export type { OwedOutcome } from './owed.js';
 export type { DoneAnswer, DoneExam, DoneOutcome } from './record-done.js';
 export type { Change } from './history.js';

@@ -6,6 +6,7 @@ import type { Database } from './database.js';
 import { historyIn, type History } from './history.js';
 import { owedIn, type Owed } from './owed.js';
 import { openPostgres } from './postgres.js';
+import { scenariosIn, type Scenarios } from './scenarios.js';
 import { requestsIn, type Requests } from './requests.js';
 import { migrate } from './schema/migrate.js';
 import { seedInto, type Seed, type Seeded } from './seed.js';
@@ -25,6 +26,7 @@ export interface Store {
   readonly owed: Owed;
   readonly history: History;
   readonly consoleLog: ConsoleLog;
+  readonly scenarios: Scenarios;
   readonly seed: (seed: Seed, who: string, atMs: number) => Promise<Seeded>;
   readonly backup: (path: string) => Promise<BackupOutcome>;
   /**
@@ -59,6 +61,7 @@ export function storeOn(database: Database): Store {
     owed: owedIn(database),
     history: historyIn(database),
     consoleLog: consoleLogIn(database),
+    scenarios: scenariosIn(database),
     seed: (seed, who, atMs) => seedInto(database, seed, who, atMs),
     backup: (path) => backUp(database, path),
     onChange: database.listeners.listen,

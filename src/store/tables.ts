@@ -17,6 +17,7 @@ export interface Tables {
   owed: OwedRow;
   done_answer: DoneAnswerRow;
   console_tap: ConsoleTapRow;
+  scenario: ScenarioRow;
   schema_step: { number: number; name: string };
 }
 
@@ -94,6 +95,14 @@ export interface ConsoleTapRow {
   who: string;
   /** JSON of what was tapped. */
   body: string;
+}
+
+export interface ScenarioRow {
+  id: string;
+  place: number;
+  /** JSON of a scenario. */
+  body: string;
+  version: number;
 }
 
 export interface DoneAnswerRow {

@@ -5,6 +5,7 @@ import { retried } from '../retried.js';
 import { consoleTables } from './console-tables.js';
 import { firstTables } from './first-tables.js';
 import { jointChanges } from './joint-changes.js';
+import { scenarioTables } from './scenario-tables.js';
 
 /** Forward only: a step that has been given out is never changed, only followed by another. */
 const steps: readonly {
@@ -14,6 +15,7 @@ const steps: readonly {
   { name: 'first tables', statements: firstTables },
   { name: 'console log', statements: consoleTables },
   { name: 'joint changes', statements: jointChanges },
+  { name: 'scenarios', statements: scenarioTables },
 ];
 
 /** Brings the tables to what this program expects: all missing steps or none, whoever else starts now. */
