@@ -16,4 +16,5 @@ export { brokenRules, visitBreaks } from './fill-check.js';
 export { takenPlace, waitingRequest } from './waiting-request.js';
 export * from './mend-problem.js';
 export { mend, onTheWayIn, type MendOptions } from './mend.js';
+export * from './mend-words.js';
 export { repeatableStream } from './repeatable-stream.js';

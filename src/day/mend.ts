@@ -1,9 +1,9 @@
 import { clock } from './conflicts.js';
-import { startIn } from './fill-free.js';
-import { dateRefusal, priorityWorth, stepMin } from './fill-problem.js';
-import { freeGaps } from './gaps.js';
+import { stepMin } from './fill-problem.js';
 import { MendGrid } from './mend-grid.js';
 import type { MendOutcome, MendProblem, Move, Repair } from './mend-problem.js';
+import { bare, noShow } from './mend-no-show.js';
+import { scannerName } from './mend-words.js';
 import { offerAt, rearrange, type Mover, type Rearranged } from './mend-search.js';
 import type { Booking, Department } from './scanners.js';
 
@@ -194,7 +194,7 @@ function described(
   const booked = moves.filter((m) => m.from !== undefined && !samePlace(m.from, m.to));
   return {
     ...rest,
-    moves: moves.filter((m) => m.from === undefined || !sameBooking(m.from, m.to)),
+    moves: moves.filter((m) => m.from === undefined || !sameBooking(m.from, m.to)).sort(byTime),
     withoutPlace: dropped.map((m) => ({
       requestId: movers[m]!.request.id,
       why: `no place on the planned days that suits the patient, the scanner and those on their way in (${causeWords(problem)})`,
@@ -223,57 +223,13 @@ function causeWords({ event, department }: MendProblem): string {
   }
 }
 
-/** A place that falls free moves nobody; those waiting who could come are named, most pressing first. */
-function noShow(problem: MendProblem, requestId: string): MendOutcome {
-  const nothing: Repair = {
-    moves: [],
-    withoutPlace: [],
-    waitOnSite: [],
-    stuck: [],
-    peopleMoved: 0,
-    shiftMin: 0,
-    fewest: true,
-    shorterSlots: false,
-  };
-  const gone = problem.visits.find((v) => v.requestId === requestId);
-  const scanner = problem.department.scanners.find((s) => s.id === gone?.scannerId);
-  if (gone === undefined || scanner === undefined) return { proposals: [nothing] };
-  const others = problem.visits.filter(
-    (v) => v !== gone && v.scannerId === gone.scannerId && v.date === gone.date,
-  );
-  const called = later(problem.movableFrom, problem.now);
-  const gap = freeGaps(scanner, others)
-    .map((g) => ({
-      ...g,
-      fromMin: called.date === gone.date ? Math.max(g.fromMin, called.minute) : g.fromMin,
-    }))
-    .find((g) => g.fromMin < gone.startMin + gone.slotMin && gone.startMin < g.toMin);
-  const couldCome =
-    gap === undefined || called.date > gone.date
-      ? []
-      : (problem.waiting ?? [])
-          .filter((request) => dateRefusal(request, gone.date) === undefined)
-          .filter((request) =>
-            (request.offers.get(scanner.id) ?? []).some(
-              (o) => startIn(gap, request, o.slotMin) !== undefined,
-            ),
-          )
-          .sort((a, b) => priorityWorth[b.priority] - priorityWorth[a.priority])
-          .map((request) => request.id);
-  return { proposals: [nothing], freed: { place: bare(gone), couldCome } };
-}
-
-const bare = ({ requestId, scannerId, date, startMin, slotMin }: Booking): Booking => ({
-  requestId,
-  scannerId,
-  date,
-  startMin,
-  slotMin,
-});
+/** As a desk reads them: an emergency first, then by the time people were booked for. */
+const byTime = (a: Move, b: Move): number => {
+  if (a.from === undefined || b.from === undefined) return a.from === undefined ? -1 : 1;
+  return before(startOf(a.from), startOf(b.from)) ? -1 : 1;
+};
 const samePlace = (a: Booking, b: Booking) =>
   a.scannerId === b.scannerId && a.date === b.date && a.startMin === b.startMin;
 const sameBooking = (a: Booking, b: Booking) => samePlace(a, b) && a.slotMin === b.slotMin;
-const scannerName = (id: string, department: Department) =>
-  department.scanners.find((s) => s.id === id)?.name ?? id;
 const at = (b: Booking, department: Department) =>
   `${scannerName(b.scannerId, department)}, ${b.date} ${clock(b.startMin)}`;

@@ -1,5 +1,5 @@
 import { bookingConflicts, type DayStretch, type Scanner } from '../day/index.js';
-import { parseDurationS } from '../interchange/index.js';
+import { parseClockMin, parseDurationS } from '../interchange/index.js';
 import { ProblemError, sayProblem } from '../shared/index.js';
 import type { WebDeps } from './deps.js';
 
@@ -19,8 +19,8 @@ export function readGap(
 
 /** A 24-hour time as minutes since midnight. */
 export function readClock(text: string): number {
-  const match = /^([01]\d|2[0-3]):([0-5]\d)$/.exec(text.trim());
-  if (match === null) {
+  const minute = parseClockMin(text);
+  if (minute === undefined) {
     throw new ProblemError({
       code: 'start-time',
       thing: 'field start',
@@ -29,7 +29,7 @@ export function readClock(text: string): number {
       wayOut: 'Write for example 09:30.',
     });
   }
-  return Number(match[1]) * 60 + Number(match[2]);
+  return minute;
 }
 
 /** A slot length: plain minutes, or a number with its unit. */

@@ -1,5 +1,5 @@
 import { Router, type Request, type Response } from 'express';
-import { clock } from '../../day/index.js';
+import { clock, placeWords, scannerName } from '../../day/index.js';
 import { ProblemError, type Problem } from '../../shared/index.js';
 import type { StoredBooking } from '../../store/index.js';
 import type { PageDeps } from '../deps.js';
@@ -11,7 +11,6 @@ import { takeTold, tell, type Told } from '../told.js';
 import { mendDone } from '../view-models/mend-done.js';
 import { mendForm } from '../view-models/mend-form.js';
 import { mendViews } from '../view-models/mend-page.js';
-import { placeWords, scannerName } from '../view-models/mend-words.js';
 import { whoIs } from '../who.js';
 
 /** Something happened to a day: what it does to whom, proposals that mend it, and accepting one. */

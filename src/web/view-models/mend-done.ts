@@ -1,8 +1,15 @@
 import { z } from 'zod';
-import type { Booking, Department } from '../../day/index.js';
+import {
+  moveWords,
+  placeWords,
+  sentence,
+  shiftWords,
+  slotWords,
+  type Booking,
+  type Department,
+} from '../../day/index.js';
 import type { Change } from '../../store/index.js';
 import type { MendPerson } from './mend-page.js';
-import { moveWords, placeWords, sentence, shiftWords, slotWords } from './mend-words.js';
 
 const image = z.object({
   requestId: z.string(),

@@ -1,9 +1,8 @@
-import { clock, type Department } from '../../day/index.js';
+import { clock, scannerName, type Department } from '../../day/index.js';
 import { priorities } from '../../planning/index.js';
 import type { StoredBooking, StoredRequest } from '../../store/index.js';
 import { befallsPatient, happenings, type Happening, type MendAsked } from '../mend-asked.js';
 import { dayFrom } from '../site-time.js';
-import { scannerName } from './mend-words.js';
 
 /** What can have happened, in the words of a desk. */
 export const happeningLabels: Readonly<Record<Happening, string>> = {

@@ -1,17 +1,20 @@
-import { clock, type Booking, type Repair } from '../../day/index.js';
-import type { StoredRequest } from '../../store/index.js';
-import { acceptField, type AcceptField } from '../mend-changes.js';
-import type { MendProposal } from '../mend-proposal.js';
 import {
+  clock,
   disturbanceWords,
   moveWords,
   people,
   placeWords,
+  proofWords,
   scannerName,
   sentence,
   shiftWords,
   slotWords,
-} from './mend-words.js';
+  type Booking,
+  type Repair,
+} from '../../day/index.js';
+import type { StoredRequest } from '../../store/index.js';
+import { acceptField, type AcceptField } from '../mend-changes.js';
+import type { MendProposal } from '../mend-proposal.js';
 
 /** Somebody in a proposal: who, then what, a sentence or two. */
 export interface MendPerson {
@@ -56,9 +59,7 @@ export function mendViews(
           ? 'First proposal: nobody loses an answer'
           : 'Second proposal: shorter slots, fewer people disturbed, some answers lost',
     summary: disturbanceWords(repair),
-    proof: repair.fewest
-      ? 'Proved: no other way of this kind leaves fewer people without a place or moves fewer.'
-      : 'Not proved: the search stopped at its limit, and a way that moves fewer people may exist.',
+    proof: proofWords(repair),
     groups: groupsOf(repair, proposal, day, person),
     fields: fieldsOf(repair, proposal, requests),
     accept: acceptWords(repair),

@@ -1,4 +1,6 @@
-import { clock, type Booking, type Department, type Repair } from '../../day/index.js';
+import { clock } from './conflicts.js';
+import type { Repair } from './mend-problem.js';
+import type { Booking, Department } from './scanners.js';
 
 export const scannerName = (id: string, department: Department): string =>
   department.scanners.find((s) => s.id === id)?.name ?? id;
@@ -66,3 +68,9 @@ export function disturbanceWords(repair: Repair): string {
   ];
   return sentence(parts.join('; '));
 }
+
+/** What is known of how good a proposal is. */
+export const proofWords = (repair: Repair): string =>
+  repair.fewest
+    ? 'Proved: no other way of this kind leaves fewer people without a place or moves fewer.'
+    : 'Not proved: the search stopped at its limit, and a way that moves fewer people may exist.';
