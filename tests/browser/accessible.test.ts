@@ -29,6 +29,8 @@ const pages = [
   '/requests/R-157/places',
   '/owed',
   '/fill?propose=1',
+  '/mend',
+  '/mend?what=down&day=2026-12-08&today=2026-12-08&scanner=mr2&from=10:00&to=14:00&now=10:00&propose=1',
   '/library',
   '/library/exams/brain-general',
   '/library/sequences/head-ax-t2-ss-half?field=3',
