@@ -12,6 +12,7 @@ declare module 'jstat' {
       cdf(k: number, n: number, p: number): number;
     };
     poisson: { cdf(k: number, mean: number): number };
+    chisquare: { cdf(x: number, degrees: number): number };
     studentt: { inv(p: number, degrees: number): number };
     normal: {
       inv(p: number, mean: number, sd: number): number;

@@ -2,3 +2,5 @@ export * from './statement.js';
 export * from './survival.js';
 export * from './profile.js';
 export * from './clean-chance.js';
+export * from './kaplan-meier.js';
+export * from './log-rank.js';
