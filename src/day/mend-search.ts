@@ -151,8 +151,10 @@ export function rearrange(
         cut = true;
         break;
       }
+      // Fewer were proved impossible by the levels before; a cut in this one leaves only the shifts unproved.
+      const proved = !cut;
       const found = level(drops, pushes);
-      if (found !== undefined) return { ...found, fewest: !cut, nodes };
+      if (found !== undefined) return { ...found, fewest: proved, nodes };
     }
     // More pushes than were looked at might still have saved this person.
     if (movers.length - displaced.length > mostPushes) cut = true;

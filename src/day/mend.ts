@@ -3,7 +3,7 @@ import { stepMin } from './fill-problem.js';
 import { MendGrid } from './mend-grid.js';
 import type { MendOutcome, MendProblem, Move, Repair } from './mend-problem.js';
 import { bare, noShow } from './mend-no-show.js';
-import { scannerName } from './mend-words.js';
+import { changedAnswers, samePlace, scannerName } from './mend-words.js';
 import { offerAt, rearrange, type Mover, type Rearranged } from './mend-search.js';
 import type { Booking, Department } from './scanners.js';
 
@@ -184,7 +184,7 @@ function described(
             ? `gets: ${is.words}`
             : same
               ? 'same answers'
-              : `${diagnosticChange < 0 ? 'loses' : diagnosticChange > 0 ? 'gains' : 'changes'}: ${is.words}${was === undefined ? '' : ` (was: ${was.words})`}`,
+              : `${diagnosticChange < 0 ? 'loses' : diagnosticChange > 0 ? 'gains' : 'changes'}: ${was === undefined ? is.words : changedAnswers(was.words, is.words)}`,
       because:
         pushedBy === undefined
           ? causeWords(problem)
@@ -228,8 +228,6 @@ const byTime = (a: Move, b: Move): number => {
   if (a.from === undefined || b.from === undefined) return a.from === undefined ? -1 : 1;
   return before(startOf(a.from), startOf(b.from)) ? -1 : 1;
 };
-const samePlace = (a: Booking, b: Booking) =>
-  a.scannerId === b.scannerId && a.date === b.date && a.startMin === b.startMin;
 const sameBooking = (a: Booking, b: Booking) => samePlace(a, b) && a.slotMin === b.slotMin;
 const at = (b: Booking, department: Department) =>
   `${scannerName(b.scannerId, department)}, ${b.date} ${clock(b.startMin)}`;

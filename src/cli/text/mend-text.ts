@@ -3,6 +3,7 @@ import colour from 'picocolors';
 import {
   clock,
   disturbanceWords,
+  farWords,
   moveWords,
   placeWords,
   proofWords,
@@ -56,6 +57,7 @@ function proposalLines(repair: Repair, n: number, of: number, problem: MendProbl
     colour.bold(heading),
     wrapped(disturbanceWords(repair), ''),
     wrapped(proofWords(repair), ''),
+    ...(farWords(repair) === '' ? [] : [wrapped(farWords(repair), '')]),
     ...group(
       'Where the emergency goes',
       repair.moves.flatMap(({ requestId, from, to, answers }) =>
@@ -72,9 +74,7 @@ function proposalLines(repair: Repair, n: number, of: number, problem: MendProbl
           : [
               person(
                 requestId,
-                sentence(
-                  `${moveWords(from, to, department, now.date)}: ${shiftWords(from, to)}${slotWords(from, to)}`,
-                ),
+                sentence(`${moveWords(from, to, department, now.date)}${slotWords(from, to)}`),
                 `${sentence(answers)} Why: ${sentence(because)}`,
               ),
             ],

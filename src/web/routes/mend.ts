@@ -65,7 +65,7 @@ export function mendRoutes(deps: PageDeps): Router {
     const joint = Number(query['done'] ?? 'x');
     const examOf = (id: string) => examName(requests.get(id)?.body.examId ?? '');
     const done = Number.isInteger(joint)
-      ? mendDone(await store.history.since(joint), joint, department, examOf)
+      ? mendDone(await store.history.since(joint), joint, department, asked.day, examOf)
       : undefined;
     const speakIds = done !== undefined ? String(query['speak'] ?? '').split(',') : [];
     const speak = (await store.bookings.listDay(asked.day))

@@ -3,7 +3,6 @@ import {
   moveWords,
   placeWords,
   sentence,
-  shiftWords,
   slotWords,
   type Booking,
   type Department,
@@ -30,6 +29,7 @@ export function mendDone(
   lines: readonly Change[],
   joint: number,
   department: Department,
+  day: string,
   examOf: (requestId: string) => string,
 ): MendDone | undefined {
   const own = lines.filter((c) => c.joint === joint && c.what === 'booking');
@@ -46,7 +46,7 @@ export function mendDone(
         {
           requestId,
           exam: examOf(requestId),
-          words: [saidOf(c.action, from.data, to.data, department)],
+          words: [saidOf(c.action, from.data, to.data, department, day)],
           waits: c.action === 'cancelled',
         },
       ];
@@ -59,12 +59,10 @@ function saidOf(
   from: Booking | undefined,
   to: Booking,
   department: Department,
+  day: string,
 ): string {
-  const at = (b: Booking) => placeWords(b, department, '');
+  const at = (b: Booking) => placeWords(b, department, day);
   if (action === 'cancelled') return `Had ${at(to)}; has no place any more and waits again.`;
   if (from === undefined) return `Has ${at(to)} now, ${to.slotMin} minutes.`;
-  if (action === 'resized') return `Keeps ${at(to)}${slotWords(from, to)}.`;
-  return sentence(
-    `${moveWords(from, to, department, '')}: ${shiftWords(from, to)}${slotWords(from, to)}`,
-  );
+  return sentence(`${moveWords(from, to, department, day)}${slotWords(from, to)}`);
 }

@@ -43,8 +43,13 @@ export function mendForm(input: {
   const address = (values: Readonly<Record<string, string>>) =>
     `/mend?${new URLSearchParams(values).toString()}`;
   const days = [...new Set([dayFrom(day, -1), ...department.days, day, dayFrom(day, 1)])].sort();
+  const about = bookings.find((b) => b.id === fields.booking);
   return {
     what,
+    about:
+      about === undefined
+        ? ''
+        : `This is about ${about.requestId}, ${exam(about.requestId)}, ${clock(about.startMin)} on ${scannerName(about.scannerId, department)}, or about that scanner.`,
     label: what === undefined ? '' : happeningLabels[what],
     fields,
     day,
@@ -63,7 +68,11 @@ export function mendForm(input: {
         current: h === what,
       })),
     days: days.map((d): Link => ({
-      href: address({ ...(what === undefined ? {} : { what }), day: d }),
+      href: address({
+        ...{ what: what ?? '', day: d },
+        // An emergency is today's: another day is another today.
+        ...(what === 'emergency' ? { today: d } : {}),
+      }),
       label: d === day || department.days.includes(d) ? d : d < day ? '←' : '→',
       said: d === day ? d : d < day ? `An earlier day, ${d}` : `A later day, ${d}`,
       current: d === day,

@@ -1,10 +1,12 @@
 import {
   clock,
   disturbanceWords,
+  farWords,
   moveWords,
-  people,
+  peopleWords,
   placeWords,
   proofWords,
+  samePlace,
   scannerName,
   sentence,
   shiftWords,
@@ -32,6 +34,8 @@ export interface MendView {
   readonly heading: string;
   readonly summary: string;
   readonly proof: string;
+  /** A way out where somebody moves far; often empty. */
+  readonly far: string;
   readonly groups: readonly MendGroup[];
   /** What accepting sends; empty when there is nothing to accept. */
   readonly fields: readonly AcceptField[];
@@ -60,6 +64,7 @@ export function mendViews(
           : 'Second proposal: shorter slots, fewer people disturbed, some answers lost',
     summary: disturbanceWords(repair),
     proof: proofWords(repair),
+    far: farWords(repair),
     groups: groupsOf(repair, proposal, day, person),
     fields: fieldsOf(repair, proposal, requests),
     accept: acceptWords(repair),
@@ -79,9 +84,7 @@ function groupsOf(
       : [
           person(
             requestId,
-            sentence(
-              `${moveWords(from, to, department, day)}: ${shiftWords(from, to)}${slotWords(from, to)}`,
-            ),
+            sentence(`${moveWords(from, to, department, day)}${slotWords(from, to)}`),
             `${sentence(answers)} Why: ${sentence(because)}`,
           ),
         ],
@@ -146,15 +149,19 @@ function fieldsOf(
 }
 
 function acceptWords(repair: Repair): string {
-  const booked = repair.moves.filter((m) => m.from !== undefined).length;
-  const placed = repair.moves.length - booked;
+  const placed = repair.moves.filter((m) => m.from === undefined).length;
+  const resized = repair.moves.filter(
+    (m) => m.from !== undefined && samePlace(m.from, m.to),
+  ).length;
+  const booked = repair.moves.length - placed - resized;
   const waits = repair.waitOnSite.length;
   const off = repair.withoutPlace.length;
   const parts = [
-    ...(booked > 0 ? [`move ${people(booked)}`] : []),
+    ...(booked > 0 ? [`move ${peopleWords(booked)}`] : []),
+    ...(resized > 0 ? [`change the slot of ${peopleWords(resized)}`] : []),
     ...(placed > 0 ? ['place the emergency'] : []),
-    ...(waits > 0 ? [`let ${people(waits)} wait`] : []),
-    ...(off > 0 ? [`take ${people(off)} off the board`] : []),
+    ...(waits > 0 ? [`let ${peopleWords(waits)} wait`] : []),
+    ...(off > 0 ? [`take ${peopleWords(off)} off the board`] : []),
   ];
   return parts.length === 0 ? 'Accept: make the slot longer' : `Accept: ${parts.join(', ')}`;
 }
