@@ -1,3 +1,5 @@
+import type { SlotOption } from './fill-problem.js';
+
 /**
  * What a filled department is worth, whole numbers, compared lexicographically: the first three more is better, the
  * last three less.
@@ -44,3 +46,7 @@ export const guideOf = (o: FillObjective): number =>
   1e-5 * o.overrunPercent -
   1e-6 * o.coilChanges -
   1e-10 * o.waiting;
+
+/** What one visit adds to the guide, its start and neighbours left out. */
+export const spotValue = (o: SlotOption, factor: number): number =>
+  factor * (o.diagnostic + 1e-2 * o.targeted + 1e-4 * o.screening) - 1e-5 * o.overrun;
