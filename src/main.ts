@@ -1,4 +1,5 @@
 import { mkdirSync } from 'node:fs';
+import { availableParallelism } from 'node:os';
 import { dirname, join } from 'node:path';
 import { pino } from 'pino';
 import { demoFolder, projectFolder } from './cli/files.js';
@@ -7,6 +8,7 @@ import { print, printProblems } from './cli/output.js';
 import { linearSolver } from './planning/index.js';
 import { openStore } from './store/index.js';
 import { createApp } from './web/app.js';
+import { seedScenarios } from './web/seed-scenarios.js';
 import { seedDepartment } from './web/seed.js';
 
 /** Everything the environment may say; nothing else reads it. */
@@ -37,6 +39,7 @@ if ((await store.requests.list()).length === 0 && settings.department === undefi
   const { requests, problems: unread } = openRequests(join(demoFolder, 'requests.csv'));
   printProblems(unread);
   const placed = await seedDepartment(requests, deps);
+  await seedScenarios(join(demoFolder, 'scenarios.yaml'), deps);
   print(`${requests.length} requests planned, ${placed} of them on the board.`);
 }
 
@@ -47,6 +50,7 @@ const app = createApp({
     assets: join(projectFolder, 'src/web/assets'),
     client: join(projectFolder, 'dist/web/client'),
   },
+  month: { threads: Math.max(1, availableParallelism() - 1) },
   log: (line, detail) => log.error(detail ?? {}, line),
 });
 const server = app.listen(settings.port, settings.host, (error) => {

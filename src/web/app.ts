@@ -4,6 +4,7 @@ import { rateLimit } from 'express-rate-limit';
 import helmet from 'helmet';
 import type { PageDeps, WebDeps } from './deps.js';
 import { pageErrors, notFound } from './errors.js';
+import { MonthRuns } from './month/month-runs.js';
 import { pageLocals } from './page.js';
 import { Planner } from './planner.js';
 import { boardRoutes } from './routes/board.js';
@@ -13,6 +14,8 @@ import { fillRoutes } from './routes/fill.js';
 import { libraryRoutes } from './routes/library.js';
 import { liveRoutes } from './routes/live.js';
 import { mendRoutes } from './routes/mend.js';
+import { monthScenarioRoutes } from './routes/month-scenario.js';
+import { monthRoutes } from './routes/month.js';
 import { methodsRoutes } from './routes/methods.js';
 import { owedRoutes } from './routes/owed.js';
 import { placesRoutes } from './routes/places.js';
@@ -20,12 +23,14 @@ import { planSheetRoutes } from './routes/plan-sheet.js';
 import { policyRoutes } from './routes/policy.js';
 import { requestEditRoutes } from './routes/request-edit.js';
 import { requestRoutes } from './routes/requests.js';
+import { slotAdviceRoutes } from './routes/slot-advice.js';
 import { whoRoutes } from './routes/who.js';
 import { sameOriginOnly } from './same-origin.js';
 
 /** The pages as one application; it listens nowhere by itself. */
 export function createApp(given: WebDeps): Express {
   const deps: PageDeps = { ...given, planner: new Planner(given) };
+  const runs = new MonthRuns({ ...given, ...given.month });
   const app = express();
   app.disable('x-powered-by');
   app.set('views', deps.folders.views);
@@ -68,6 +73,9 @@ export function createApp(given: WebDeps): Express {
   app.use(placesRoutes(deps));
   app.use(fillRoutes(deps));
   app.use(mendRoutes(deps));
+  app.use(slotAdviceRoutes(deps, runs));
+  app.use(monthScenarioRoutes(deps));
+  app.use(monthRoutes(deps, runs));
   app.use(owedRoutes(deps));
   app.use(consoleRoutes(deps));
   app.use(libraryRoutes(deps));

@@ -13,6 +13,8 @@ export interface WebDeps {
   readonly now: () => number;
   /** Folder that holds the EJS views, and folders of static files. */
   readonly folders: { readonly views: string; readonly assets: string; readonly client: string };
+  /** Threads that months are simulated in, and their compiled file where it is not beside the pool. */
+  readonly month: { readonly threads: number; readonly workerFile?: URL };
   /** Writes one line about a fault; never patient data. */
   readonly log: (line: string, detail?: Record<string, unknown>) => void;
 }

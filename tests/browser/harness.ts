@@ -1,4 +1,4 @@
-import { existsSync, mkdtempSync } from 'node:fs';
+import { existsSync, mkdtempSync, readdirSync } from 'node:fs';
 import type { AddressInfo } from 'node:net';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -8,6 +8,7 @@ import { openDepartment, openGround, openRequests } from '../../src/cli/ground.j
 import { demoFolder, projectFolder } from '../../src/cli/files.js';
 import { linearSolver } from '../../src/planning/index.js';
 import { openStore, type Store } from '../../src/store/index.js';
+import { compiledWorker } from '../throughput/compiled-worker.js';
 import { createApp } from '../../src/web/app.js';
 import { seedDepartment } from '../../src/web/seed.js';
 
@@ -34,8 +35,8 @@ export async function openSite(
 ): Promise<Site> {
   const client = mkdtempSync(join(tmpdir(), 'stillspan-client-'));
   await build({
-    entryPoints: ['board', 'intake', 'console'].map((name) =>
-      join(projectFolder, `src/web/client/${name}.ts`),
+    entryPoints: readdirSync(join(projectFolder, 'src/web/client')).map((name) =>
+      join(projectFolder, 'src/web/client', name),
     ),
     bundle: true,
     format: 'esm',
@@ -66,6 +67,7 @@ export async function openSite(
       assets: join(projectFolder, 'src/web/assets'),
       client,
     },
+    month: { threads: 1, workerFile: compiledWorker() },
     log: (line, detail) => process.stderr.write(`${line} ${JSON.stringify(detail)}\n`),
   });
   const server = app.listen(options.port ?? 0, '127.0.0.1');

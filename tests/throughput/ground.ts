@@ -1,9 +1,5 @@
 import { fileURLToPath } from 'node:url';
 import { join } from 'node:path';
-import { buildSync } from 'esbuild';
-import { mkdtempSync } from 'node:fs';
-import { tmpdir } from 'node:os';
-import { pathToFileURL } from 'node:url';
 import { openDepartment, openGround, openRequests } from '../../src/cli/ground.js';
 import {
   PlanBook,
@@ -34,18 +30,4 @@ export function worked(scenario: Scenario): WorkedOut {
   let step = run.next();
   while (step.done !== true) step = run.next();
   return step.value;
-}
-
-/** The simulation thread, compiled for a test run. */
-export function compiledWorker(): URL {
-  const outfile = join(mkdtempSync(join(tmpdir(), 'month-')), 'month-worker.mjs');
-  buildSync({
-    entryPoints: [join(root, 'src/throughput/pool/month-worker.ts')],
-    bundle: true,
-    platform: 'node',
-    format: 'esm',
-    outfile,
-    logLevel: 'silent',
-  });
-  return pathToFileURL(outfile);
 }

@@ -5,7 +5,8 @@ import { drawsPerExam, emptyRun, runExam } from '../../src/throughput/exam-run.j
 import { simulateMonth, type SimDepartment } from '../../src/throughput/index.js';
 import { PatientSource } from '../../src/throughput/patients.js';
 import { simulateMonths } from '../../src/throughput/pool/month-pool.js';
-import { book, compiledWorker, department, requests, usual, worked } from './ground.js';
+import { compiledWorker } from './compiled-worker.js';
+import { book, department, requests, usual, worked } from './ground.js';
 
 const byTolerance = {
   ...usual,

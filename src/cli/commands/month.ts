@@ -12,7 +12,8 @@ import { demoFolder, readText } from '../files.js';
 import { openDepartment, openGround, openRequests } from '../ground.js';
 import { runScenarios } from '../month-run.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
-import { monthCsv, monthText } from '../text/month-text.js';
+import { monthCsv } from '../text/month-csv.js';
+import { monthText } from '../text/month-text.js';
 
 interface MonthFlags {
   readonly requests?: string;
