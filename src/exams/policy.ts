@@ -41,6 +41,20 @@ export interface Calibration {
   readonly atS: number;
 }
 
+/** What the site's own records may replace. */
+export const learnedKinds = ['still', 'hold', 'stay', 'entry'] as const;
+export type LearnedKind = (typeof learnedKinds)[number];
+
+/** A signature that puts the site's own records, up to the day it was given, in the place of a prior. */
+export interface LearningEntry {
+  readonly group: string;
+  readonly kind: LearnedKind;
+  readonly signedBy: string;
+  /** ISO date; later records do not change what was signed. */
+  readonly signedOn: string;
+  readonly because: string;
+}
+
 export interface SitePolicy {
   readonly site: string;
   readonly signedBy: string;
@@ -98,6 +112,15 @@ export interface SitePolicy {
   readonly tolerance: {
     /** Chance that a stated span is reached, by who said so. */
     readonly statedReached: Readonly<Record<StatementSource, Sourced<number>>>;
+    /** The same of one kind of span, where the site's own records replace the figure; never in the file. */
+    readonly statedReachedLearned?: Readonly<
+      Partial<
+        Record<
+          'still' | 'hold' | 'stay',
+          Readonly<Partial<Record<StatementSource, Sourced<number>>>>
+        >
+      >
+    >;
     /** Where nothing was stated. */
     readonly still: Readonly<Record<PatientClass, Sourced<Calibration>>>;
     /** Children by age: the first row whose `underYears` exceeds the age. */
@@ -110,6 +133,11 @@ export interface SitePolicy {
     readonly stayClaustrophobic: Sourced<Calibration>;
     /** Chance that must be left when a prior, not a statement, sets the span planned for. */
     readonly plannedReached: Sourced<number>;
+  };
+  readonly learning: {
+    /** Fewer records of a group than this replace nothing. */
+    readonly leastRecords: Sourced<number>;
+    readonly entries: readonly LearningEntry[];
   };
   readonly owed: {
     /** Days in which a question left below diagnostic must be answered, by priority. */

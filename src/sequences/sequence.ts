@@ -61,8 +61,13 @@ export const planes: readonly Plane[] = ['axial', 'sagittal', 'coronal', 'obliqu
 export type Breathing = 'none' | 'free' | 'held' | 'triggered';
 export const breathings: readonly Breathing[] = ['none', 'free', 'held', 'triggered'];
 
-export type Basis = 'published' | 'common practice' | 'assumption';
-export const bases: readonly Basis[] = ['published', 'common practice', 'assumption'];
+export type Basis = 'published' | 'common practice' | 'assumption' | 'own records';
+export const bases: readonly Basis[] = [
+  'published',
+  'common practice',
+  'assumption',
+  'own records',
+];
 
 /** One radio-frequency pulse's shape: duration in ms; mean-square over squared-mean of its envelope (1: hard pulse). */
 export interface PulseShape {

@@ -1,4 +1,5 @@
 import type { SitePolicy } from '../exams/index.js';
+import { holdGroup, stayGroup, stillGroup, type SpanKind } from './groups.js';
 import type { ToleranceStatement } from './statement.js';
 import { longestWith, weibullThrough, weibullWithMean, type Survival } from './survival.js';
 
@@ -48,29 +49,13 @@ function stillCurve(statement: ToleranceStatement, policy: SitePolicy): Curve {
   const shape = policy.movement.shape.value;
   if (statement.still.kind === 'stated') {
     const { seconds } = statement.still;
-    return stated(seconds, statement, policy, shape, `still for ${minutes(seconds)}`);
+    return stated('still', seconds, statement, policy, shape, `still for ${minutes(seconds)}`);
   }
-  const prior = stillPrior(statement, policy);
+  const { prior, words } = stillGroup(statement, policy);
   return {
     curve: weibullThrough(prior.value.chance, prior.value.atS, shape),
-    says: `stillness not asked yet: planned as for ${prior.group}, ${percent(prior.value.chance)} keep still for ${minutes(prior.value.atS)} (${prior.source})`,
+    says: `stillness not asked yet: planned as for ${words}, ${percent(prior.value.chance)} keep still for ${minutes(prior.value.atS)} (${prior.source})`,
   };
-}
-
-/** Children by age first; then pain, tremor and confusion count as the least still group. */
-function stillPrior(statement: ToleranceStatement, policy: SitePolicy) {
-  const age = statement.ageYears;
-  const rows = policy.tolerance.stillChild;
-  const child =
-    age === undefined
-      ? undefined
-      : [...rows].sort((a, b) => a.underYears - b.underYears).find((row) => age < row.underYears);
-  if (child !== undefined) return { ...child, group: `children under ${child.underYears}` };
-  const unsettled = statement.conditions.some(
-    (c) => c === 'tremor' || c === 'pain' || c === 'confused' || c === 'small child',
-  );
-  if (unsettled) return { ...policy.tolerance.still.emergency, group: 'emergency patients' };
-  return { ...policy.tolerance.still[statement.patientClass], group: `${statement.patientClass}s` };
 }
 
 function holdCurve(
@@ -84,7 +69,14 @@ function holdCurve(
   if (statement.hold.kind === 'stated') {
     const { seconds } = statement.hold;
     if (seconds <= 0) return never('cannot hold the breath: none is planned');
-    const curve = stated(seconds, statement, policy, shape, `holds the breath ${seconds} s`);
+    const curve = stated(
+      'hold',
+      seconds,
+      statement,
+      policy,
+      shape,
+      `holds the breath ${seconds} s`,
+    );
     return { ...curve, spanS: seconds, restsOnPrior: false };
   }
   const tooYoung =
@@ -97,42 +89,50 @@ function holdCurve(
       'confused, and nobody asked whether instructions are followed: no breath-hold is planned',
     );
   }
-  const breathless = statement.conditions.includes('breathless');
-  const prior = breathless ? policy.tolerance.holdBreathless : policy.tolerance.holdAdult;
+  const { prior, words } = holdGroup(statement, policy);
   const curve = weibullWithMean(prior.value.meanS, shape);
   const spanS = longestWith(curve, policy.tolerance.plannedReached.value, 300);
   return {
     curve,
     spanS,
     restsOnPrior: true,
-    says: `breath-hold not asked yet: planned for ${spanS.toFixed(0)} s, which ${percent(policy.tolerance.plannedReached.value)} of ${breathless ? 'breathless patients' : 'adults'} reach (${prior.source})`,
+    says: `breath-hold not asked yet: planned for ${spanS.toFixed(0)} s, which ${percent(policy.tolerance.plannedReached.value)} of ${words} reach (${prior.source})`,
   };
 }
 
 function stayCurve(statement: ToleranceStatement, policy: SitePolicy): Curve {
   if (statement.stay.kind === 'stated') {
     const { seconds } = statement.stay;
-    return stated(seconds, statement, policy, 1, `bears the scanner for ${minutes(seconds)}`);
+    return stated(
+      'stay',
+      seconds,
+      statement,
+      policy,
+      1,
+      `bears the scanner for ${minutes(seconds)}`,
+    );
   }
-  const claustrophobic = statement.conditions.includes('claustrophobia');
-  const prior = claustrophobic ? policy.tolerance.stayClaustrophobic : policy.tolerance.stay;
+  const { prior, words } = stayGroup(statement, policy);
   return {
     curve: weibullThrough(prior.value.chance, prior.value.atS),
-    says: `time in the scanner not asked yet: planned as ${claustrophobic ? 'for claustrophobic patients' : 'for patients at large'}, ${percent(prior.value.chance)} bear ${minutes(prior.value.atS)} (${prior.source})`,
+    says: `time in the scanner not asked yet: planned as for ${words}, ${percent(prior.value.chance)} bear ${minutes(prior.value.atS)} (${prior.source})`,
   };
 }
 
 function stated(
+  kind: SpanKind,
   seconds: number,
   statement: ToleranceStatement,
   policy: SitePolicy,
   shape: number,
   words: string,
 ): Curve {
-  const reached = policy.tolerance.statedReached[statement.saidBy].value;
+  const { statedReached, statedReachedLearned } = policy.tolerance;
+  const learned = statedReachedLearned?.[kind]?.[statement.saidBy];
+  const reached = (learned ?? statedReached[statement.saidBy]).value;
   return {
     curve: weibullThrough(reached, Math.max(seconds, 0.1), shape),
-    says: `${words}, said by ${statement.saidBy === 'earlier exam' ? 'an earlier exam' : `the ${statement.saidBy}`}; ${percent(reached)} of such statements are counted on`,
+    says: `${words}, said by ${statement.saidBy === 'earlier exam' ? 'an earlier exam' : `the ${statement.saidBy}`}; ${percent(reached)} of such statements are counted on${learned === undefined ? '' : ` (${learned.source})`}`,
   };
 }
 

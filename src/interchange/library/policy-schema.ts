@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { bases, families } from '../../sequences/index.js';
-import { grades } from '../../exams/index.js';
+import { grades, learnedKinds } from '../../exams/index.js';
 
 const text = z.string().min(2);
 const date = z.iso.date();
@@ -40,6 +40,30 @@ const entry = z.strictObject({
 const otherwise = z.strictObject(
   Object.fromEntries(families.map((f) => [f, sourced(z.enum(grades))])),
 );
+
+const learningEntry = z.strictObject({
+  group: text,
+  kind: z.enum(learnedKinds),
+  signedBy: text,
+  signedOn: date,
+  because: text,
+});
+
+/** A policy without this section replaces nothing by what was learned. */
+const learning = z
+  .strictObject({
+    leastRecords: sourced(z.number().int().min(5).max(10_000)),
+    entries: z
+      .array(learningEntry)
+      .refine(
+        (entries) => new Set(entries.map((e) => `${e.kind}/${e.group}`)).size === entries.length,
+        'one entry a group and kind; put the newer signature in the place of the older',
+      ),
+  })
+  .default({
+    leastRecords: { value: 30, basis: 'assumption', source: 'Set by us; the file names none' },
+    entries: [],
+  });
 
 export const policyFile = z.strictObject({
   site: text,
@@ -110,6 +134,7 @@ export const policyFile = z.strictObject({
     stayClaustrophobic: sourced(calibration),
     plannedReached: sourced(z.number().gt(0).lt(1)),
   }),
+  learning,
   owed: z.strictObject({
     dueDays: z.strictObject({
       stat: sourced(z.number().int().positive()),

@@ -2,6 +2,7 @@ import type { Exam, SiteLibrary, SitePolicy } from '../../exams/index.js';
 import type { FieldT } from '../../physics/index.js';
 import type { Sequence } from '../../sequences/index.js';
 import type { Problem } from '../../shared/index.js';
+import { replaceable } from '../../tolerance/index.js';
 import { policyFile } from './policy-schema.js';
 import { readExam } from './read-exam.js';
 import { readSequences } from './read-sequences.js';
@@ -58,7 +59,8 @@ export function readLibrary(files: readonly LibraryFile[]): LoadedLibrary {
     if (parsed.success) policy = parsed.data as unknown as SitePolicy;
     else problems.push(...schemaProblems(parsed.error, source, source.value, 'site policy'));
   }
-  if (policy !== undefined) problems.push(...catalogueProblems(policy, exams));
+  if (policy !== undefined)
+    problems.push(...catalogueProblems(policy, exams), ...learningProblems(policy));
   if (policy === undefined && !problems.some((p) => p.thing.startsWith('policy.yaml'))) {
     problems.push({
       code: 'library-no-policy',
@@ -88,6 +90,20 @@ function catalogueProblems(policy: SitePolicy, exams: ReadonlyMap<string, Exam>)
       thing: 'policy.yaml, catalogue entry',
       value: describe(entry.question),
       limit: 'must name an exam and a question of the library, or exam/*',
+      wayOut: 'Correct the entry; until then it has no effect.',
+    }));
+}
+
+/** A signature for a group that the policy does not have switches nothing on: say so. */
+function learningProblems(policy: SitePolicy): Problem[] {
+  const known = replaceable(policy);
+  return policy.learning.entries
+    .filter((entry) => !known.some((k) => k.kind === entry.kind && k.group === entry.group))
+    .map((entry) => ({
+      code: 'library-reference',
+      thing: `policy.yaml, learning entry of kind "${entry.kind}"`,
+      value: describe(entry.group),
+      limit: `groups of this kind: ${known.flatMap((k) => (k.kind === entry.kind ? [k.group] : [])).join('; ')}`,
       wayOut: 'Correct the entry; until then it has no effect.',
     }));
 }

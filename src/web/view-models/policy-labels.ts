@@ -11,6 +11,7 @@ export const policySections: readonly { readonly key: PolicySectionKey; readonly
     { key: 'breathing', name: 'Breathing' },
     { key: 'tolerance', name: 'What a patient can bear' },
     { key: 'time', name: 'Time' },
+    { key: 'learning', name: "Learning from this site's own records" },
     { key: 'owed', name: 'Answers owed' },
   ];
 
@@ -38,6 +39,8 @@ export const policyLabels: Readonly<Record<string, string>> = {
   'time.classExtraS': 'added to getting in',
   'time.transportExtraS': 'added to getting in',
   'tolerance.statedReached': 'a stated span is reached, said by',
+  'tolerance.statedReachedLearned': 'a stated span is reached, by kind and who said it',
+  'learning.leastRecords': 'least records of a group before they may replace a prior',
   'tolerance.still': 'keeps still where nobody was asked',
   'tolerance.stillChild': 'keeps still where nobody was asked',
   'tolerance.holdAdult': 'breath-hold of an adult',
