@@ -3,30 +3,10 @@ import { expect, it } from 'vitest';
 import type { ManyChange } from '../../src/store/index.js';
 import { expectWhole } from './check-whole.js';
 import { at, day, examRequest, expectKind, freshStore, onEveryStore, openAgain } from './ground.js';
-
-const starts = [480, 510, 540];
+import { board, bookThree, move } from './three-booked.js';
 
 onEveryStore('several bookings moved at once', (kind) => {
-  /** R-1 08:00, R-2 08:30, R-3 09:00, half an hour each; R-4 and R-5 wait. */
-  const threeBooked = async () => {
-    const fresh = await freshStore(kind);
-    for (const n of [1, 2, 3, 4, 5])
-      await fresh.store.requests.add(examRequest(`R-${n}`), 'Ina', 1);
-    for (const [n, start] of starts.entries())
-      await fresh.store.bookings.place(
-        { requestId: `R-${n + 1}`, ...at(start, 30), plan: { n } },
-        'Jo',
-        2,
-      );
-    return fresh;
-  };
-  const move = (n: number, startMin: number, version = 1): ManyChange => ({
-    id: `R-${n}.1`,
-    version,
-    to: { startMin },
-  });
-  const board = async ({ store }: Awaited<ReturnType<typeof threeBooked>>) =>
-    Object.fromEntries((await store.bookings.listDay(day)).map((b) => [b.requestId, b.startMin]));
+  const threeBooked = () => bookThree(kind);
 
   it('two swap places, each with its line in the history', async () => {
     const fresh = await threeBooked();
@@ -165,60 +145,6 @@ onEveryStore('several bookings moved at once', (kind) => {
     expectKind(await many(move(1, 600), move(3, 700, 2)), 'refused');
     expectKind(await many(move(1, 600), { id: 'R-3.1', version: 2, cancel: true }), 'refused');
     expect(await board(fresh)).toEqual({ 'R-1': 480, 'R-2': 510, 'R-3': 540 });
-    await expectWhole(database);
-  });
-
-  it('undo puts a swap back as a whole, with the plans it had, and then goes one step further back', async () => {
-    const fresh = await threeBooked();
-    const { store, database } = fresh;
-    await store.bookings.move('R-3.1', 1, { startMin: 600 }, 'Ina', 3);
-    await store.bookings.moveMany(
-      [
-        { ...move(1, 510), to: { startMin: 510, slotMin: 20, plan: { short: true } } },
-        move(2, 480),
-      ],
-      'Ina',
-      4,
-    );
-    const undone = expectKind(await store.history.undoLast('Ina', 5), 'undone');
-    expect(undone.what).toContain('R-1 moved');
-    expect(undone.what).toContain('R-2 moved');
-    expect(await board(fresh)).toEqual({ 'R-1': 480, 'R-2': 510, 'R-3': 600 });
-    expect(await store.bookings.get('R-1.1')).toMatchObject({ slotMin: 30, plan: { n: 0 } });
-    await expectWhole(database);
-    expect(expectKind(await store.history.undoLast('Ina', 6), 'undone').what).toBe('R-3 moved');
-    expect(await board(fresh)).toEqual({ 'R-1': 480, 'R-2': 510, 'R-3': 540 });
-    expectKind(await store.history.undoLast('Ina', 7), 'refused');
-    await expectWhole(database);
-  });
-
-  it('undo takes the emergency off again and gives back the place of the one it pushed off', async () => {
-    const fresh = await threeBooked();
-    const { store, database } = fresh;
-    await store.bookings.moveMany(
-      [{ id: 'R-1.1', version: 1, cancel: true }, { place: { requestId: 'R-4', ...at(480, 30) } }],
-      'Ina',
-      3,
-    );
-    expectKind(await store.history.undoLast('Ina', 4), 'undone');
-    expect(await board(fresh)).toEqual({ 'R-1': 480, 'R-2': 510, 'R-3': 540 });
-    expect((await store.requests.get('R-4'))?.status).toBe('waiting');
-    await expectWhole(database);
-  });
-
-  it('undo of a joint change is refused whole when one old place is taken or one booking was changed since', async () => {
-    const fresh = await threeBooked();
-    const { store, database } = fresh;
-    await store.bookings.moveMany([move(1, 600), move(2, 640)], 'Ina', 3);
-    await store.bookings.place({ requestId: 'R-5', ...at(515, 20) }, 'Jo', 4);
-    const taken = expectKind(await store.history.undoLast('Ina', 5), 'refused');
-    expect(taken.why).toContain('R-5');
-    expect(await board(fresh)).toMatchObject({ 'R-1': 600, 'R-2': 640 });
-    expectKind(await store.history.undoLast('Jo', 6), 'undone');
-    await store.bookings.move('R-1.1', 2, { startMin: 700 }, 'Jo', 7);
-    const changed = expectKind(await store.history.undoLast('Ina', 8), 'refused');
-    expect(changed.why).toContain('Jo');
-    expect(await board(fresh)).toMatchObject({ 'R-1': 700, 'R-2': 640 });
     await expectWhole(database);
   });
 });
