@@ -9,6 +9,7 @@ import { addMonthCommand } from './commands/month.js';
 import { addPhysicsCommands } from './commands/physics.js';
 import { addPlanCommand } from './commands/plan.js';
 import { addSequenceCommand } from './commands/sequence.js';
+import { addSlotsCommand } from './commands/slots.js';
 import { exitCodeHelp, exitCodes, printProblems } from './output.js';
 
 const program = new Command('stillspan')
@@ -27,6 +28,7 @@ addFillCommand(program);
 addMendCommand(program);
 addMonthCommand(program);
 addSequenceCommand(program);
+addSlotsCommand(program);
 addLibraryCommand(program);
 addPhysicsCommands(program);
 

@@ -14,3 +14,4 @@ export * from './findings.js';
 export * from './compare.js';
 export * from './slot-advice.js';
 export * from './advice-table.js';
+export * from './filled-days.js';

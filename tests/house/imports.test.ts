@@ -14,7 +14,7 @@ const allowed: Record<string, readonly string[]> = {
   console: downhill,
   throughput: [...downhill, 'day', 'console'],
   interchange: [...downhill, 'day', 'console', 'throughput'],
-  store: [...downhill, 'day', 'console', 'throughput'],
+  store: [...downhill, 'day', 'console', 'throughput', 'interchange'],
   cli: [...downhill, 'day', 'console', 'throughput', 'interchange', 'store'],
   web: [...downhill, 'day', 'console', 'throughput', 'interchange', 'store', 'cli'],
 };
