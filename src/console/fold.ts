@@ -8,6 +8,8 @@ export interface Try {
   readonly fromS: number;
   readonly toS: number;
   readonly outcome: 'clean' | 'moved' | 'hold failed' | 'stopped';
+  /** When the breath gave out, s after the start, as it was tapped; only where a hold failed. */
+  readonly heldS?: number;
 }
 
 /** Where an exam stands. Seconds since its slot began. */
@@ -24,9 +26,12 @@ export interface ConsoleState {
   readonly tolerance: ToleranceStatement;
   readonly injectedS?: number;
   readonly wantsOut: boolean;
+  /** When the patient first wanted out, talked round or not. */
+  readonly firstWantedOutS?: number;
   readonly first?: string;
   readonly dropped: ReadonlySet<string>;
   readonly ended: boolean;
+  readonly endedS?: number;
 }
 
 /** A patient who moved at once is still taken to keep still this long: slices of a single-shot are shorter. */
@@ -45,8 +50,10 @@ export function foldEvents(
 ): ConsoleState {
   const sorted = [...events].sort((a, b) => a.seq - b.seq);
   const taken = takenBack(sorted);
+  const firstS = sorted.find((e) => Number.isFinite(e.atS))?.atS ?? 0;
   let state: ConsoleState = {
-    nowS: 0,
+    // An exam may begin before its slot.
+    nowS: Math.min(0, firstS),
     tries: [],
     tolerance: said,
     wantsOut: false,
@@ -95,6 +102,7 @@ function step(state: ConsoleState, event: ConsoleEvent): ConsoleState {
       return {
         ...state,
         wantsOut: true,
+        firstWantedOutS: state.firstWantedOutS ?? state.nowS,
         tolerance: { ...state.tolerance, stay: { kind: 'stated', seconds } },
       };
     }
@@ -113,7 +121,7 @@ function step(state: ConsoleState, event: ConsoleEvent): ConsoleState {
     case 'dropped':
       return { ...state, dropped: new Set([...state.dropped, event.viewId]) };
     case 'ended':
-      return { ...withoutRunning(state, 'stopped'), ended: true };
+      return { ...withoutRunning(state, 'stopped'), ended: true, endedS: state.nowS };
     case 'undone':
       return state;
   }
@@ -124,13 +132,17 @@ export function inScannerS(state: ConsoleState): number {
   return state.enteredS === undefined ? 0 : state.nowS - state.enteredS;
 }
 
-function withoutRunning(state: ConsoleState, outcome: Try['outcome']): ConsoleState {
+function withoutRunning(
+  state: ConsoleState,
+  outcome: Try['outcome'],
+  held: { readonly heldS?: number } = {},
+): ConsoleState {
   const { running, ...rest } = state;
   if (running === undefined) return state;
   const { viewId, sequenceId, sinceS: fromS } = running;
   return {
     ...rest,
-    tries: [...state.tries, { viewId, sequenceId, fromS, toS: state.nowS, outcome }],
+    tries: [...state.tries, { viewId, sequenceId, fromS, toS: state.nowS, outcome, ...held }],
   };
 }
 
@@ -156,7 +168,10 @@ function holdFailed(state: ConsoleState, afterS: number): ConsoleState {
   const seenS = Number.isFinite(afterS) ? Math.max(0, afterS) : 0;
   const saidS = tolerance.hold.kind === 'stated' ? tolerance.hold.seconds : Infinity;
   const hold = { kind: 'stated', seconds: Math.min(saidS, seenS) } as const;
-  return { ...withoutRunning(state, 'hold failed'), tolerance: { ...tolerance, hold } };
+  return {
+    ...withoutRunning(state, 'hold failed', { heldS: seenS }),
+    tolerance: { ...tolerance, hold },
+  };
 }
 
 function without(set: ReadonlySet<string>, item: string): ReadonlySet<string> {

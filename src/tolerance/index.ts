@@ -5,3 +5,4 @@ export * from './profile.js';
 export * from './clean-chance.js';
 export * from './kaplan-meier.js';
 export * from './log-rank.js';
+export * from './achieved.js';

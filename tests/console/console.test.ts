@@ -240,7 +240,7 @@ describe('1,000 generated stories', () => {
         const events = log(...happenings);
         const said = exam.request.tolerance;
         expect(foldEvents([...events].reverse(), said)).toEqual(foldEvents(events, said));
-        let beforeS = 0;
+        let beforeS = -Infinity;
         let cleanBefore = 0;
         let answeredBefore = exam.questions.map(() => 0);
         for (let n = 1; n <= events.length; n++) {
