@@ -6,11 +6,13 @@ import {
   type Measure,
 } from '../../throughput/index.js';
 import { wrapped } from './layout.js';
+import { monthBars } from './month-bars.js';
 
 const measures = Object.keys(measureWords) as Measure[];
 
 /** A comparison for an 80-column terminal: figures with limits, then what changes in words. */
-export function monthText({ scenarios, days, stopped }: Comparison): string {
+export function monthText(comparison: Comparison): string {
+  const { scenarios, days, stopped } = comparison;
   const lines: string[] = [];
   if (stopped) lines.push(colour.bold('Stopped early: what follows rests on the months done.'), '');
   lines.push(
@@ -19,6 +21,7 @@ export function monthText({ scenarios, days, stopped }: Comparison): string {
       '',
     ),
   );
+  lines.push('', monthBars(comparison));
   scenarios.forEach(({ name, estimates, findings, leftOut }, n) => {
     lines.push('', colour.bold(`${n + 1}. ${name}`));
     for (const measure of measures) {
