@@ -53,6 +53,10 @@ export interface LearningEntry {
   /** ISO date; later records do not change what was signed. */
   readonly signedOn: string;
   readonly because: string;
+  /** Where the curve is read instead of at the prior's own point, s: records that end earlier are then carried on. */
+  readonly readAtS?: number;
+  /** The same for a statement: share of what was said, 0..1. */
+  readonly readAtShare?: number;
 }
 
 export interface SitePolicy {

@@ -6,3 +6,8 @@ export * from './clean-chance.js';
 export * from './kaplan-meier.js';
 export * from './log-rank.js';
 export * from './achieved.js';
+export * from './learned-priors.js';
+export * from './learning.js';
+export type { LearnedTime, TimeEstimate } from './learned-times.js';
+export * from './learned-policy.js';
+export { share, spanWords } from './learned-words.js';

@@ -20,6 +20,11 @@ export function weibullWithMean(meanS: number, shape: number): Survival {
   return (tS) => (tS <= 0 ? 1 : Math.exp(-((tS / scale) ** shape)));
 }
 
+/** Mean of the Weibull survival curve through one point. */
+export function weibullMean(chance: number, atS: number, shape: number): number {
+  return (atS / (-Math.log(chance)) ** (1 / shape)) * gamma(1 + 1 / shape);
+}
+
 /** Chance of t more seconds undisturbed after u seconds have gone well: S(u+t)/S(u). */
 export function conditional(survival: Survival, elapsedS: number, tS: number): number {
   const before = survival(elapsedS);

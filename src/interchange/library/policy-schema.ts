@@ -47,6 +47,8 @@ const learningEntry = z.strictObject({
   signedBy: text,
   signedOn: date,
   because: text,
+  readAtS: z.number().positive().exactOptional(),
+  readAtShare: z.number().gt(0).max(1).exactOptional(),
 });
 
 /** A policy without this section replaces nothing by what was learned. */
