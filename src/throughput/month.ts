@@ -139,10 +139,10 @@ export function simulateMonth(department: SimDepartment, month: number): MonthRe
       }
       const startMin = served.startMin[n]!;
       const endMin = served.endMin[n]!;
+      if (patient === undefined) return;
       const { open } = scanners[s]!;
       for (const [from, to] of open)
         count.busyMin += Math.max(0, Math.min(endMin, to) - Math.max(startMin, from));
-      if (patient === undefined) return;
       count.overtimeMin += Math.max(0, endMin - Math.max(startMin, open.at(-1)![1]));
       const { readyMin } = coming[n]!.visit;
       if (appointment === undefined) count.emergencyWaits.add(startMin - readyMin);
