@@ -1,4 +1,6 @@
 import { rankOf, type Grade } from '../exams/index.js';
+import type { AchievedRecord } from '../tolerance/index.js';
+import { keepAchieved } from './achieved.js';
 import { changeBooking } from './booking-change.js';
 import { waitingFor } from './follow-up.js';
 import type { Tx } from './in-transaction.js';
@@ -21,6 +23,8 @@ export interface DoneExam {
   readonly answers: readonly DoneAnswer[];
   /** ISO date by which what is still owed is due. */
   readonly dueDate: string;
+  /** What the exam showed of stillness, breath, bearing and time; none where nothing was tapped. */
+  readonly achieved?: readonly AchievedRecord[];
 }
 
 export type DoneOutcome =
@@ -66,6 +70,7 @@ export async function recordDone(tx: Tx, exam: DoneExam): Promise<DoneOutcome> {
   } as const;
   const written = await changeBooking(tx, change);
   if (written.kind !== 'placed') throw new Error(`booking ${bookingId} lost the place it held`);
+  await keepAchieved(tx, bookingId, exam.achieved ?? []);
   const owed: StoredOwed[] = [];
   for (const { questionId, name, grade } of answers) {
     if (grade === 'diagnostic' || continued.has(questionId)) continue;

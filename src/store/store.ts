@@ -1,4 +1,5 @@
 import { ProblemError } from '../shared/index.js';
+import { achievedIn, type Achieved } from './achieved.js';
 import { backUp, type BackupOutcome } from './backup.js';
 import { bookingsIn, type Bookings } from './bookings.js';
 import { consoleLogIn, type ConsoleLog } from './console-log.js';
@@ -27,6 +28,7 @@ export interface Store {
   readonly history: History;
   readonly consoleLog: ConsoleLog;
   readonly scenarios: Scenarios;
+  readonly achieved: Achieved;
   readonly seed: (seed: Seed, who: string, atMs: number) => Promise<Seeded>;
   readonly backup: (path: string) => Promise<BackupOutcome>;
   /**
@@ -62,6 +64,7 @@ export function storeOn(database: Database): Store {
     history: historyIn(database),
     consoleLog: consoleLogIn(database),
     scenarios: scenariosIn(database),
+    achieved: achievedIn(database),
     seed: (seed, who, atMs) => seedInto(database, seed, who, atMs),
     backup: (path) => backUp(database, path),
     onChange: database.listeners.listen,

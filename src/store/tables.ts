@@ -1,5 +1,6 @@
 import type { Generated } from 'kysely';
-import type { Grade } from '../exams/index.js';
+import type { Grade, StatementSource } from '../exams/index.js';
+import type { AchievedKind } from '../tolerance/index.js';
 import type { BookingStatus } from './booking-status.js';
 
 export const requestStatuses = ['waiting', 'booked', 'done', 'cancelled'] as const;
@@ -18,6 +19,8 @@ export interface Tables {
   done_answer: DoneAnswerRow;
   console_tap: ConsoleTapRow;
   scenario: ScenarioRow;
+  achieved: AchievedRow;
+  counted_exam: { booking_id: string };
   schema_step: { number: number; name: string };
 }
 
@@ -95,6 +98,20 @@ export interface ConsoleTapRow {
   who: string;
   /** JSON of what was tapped. */
   body: string;
+}
+
+export interface AchievedRow {
+  /** Drawn by chance; leads to no booking. */
+  id: string;
+  kind: AchievedKind;
+  patient_group: string;
+  seconds: number;
+  /** 1: censored. */
+  censored: number;
+  stated_s: number | null;
+  said_by: StatementSource | null;
+  /** ISO date. */
+  recorded_on: string;
 }
 
 export interface ScenarioRow {

@@ -2,6 +2,7 @@ import { sql } from 'kysely';
 import { ProblemError } from '../../shared/index.js';
 import type { Database, DatabaseKind } from '../database.js';
 import { retried } from '../retried.js';
+import { achievedTables } from './achieved-tables.js';
 import { consoleTables } from './console-tables.js';
 import { firstTables } from './first-tables.js';
 import { jointChanges } from './joint-changes.js';
@@ -16,6 +17,7 @@ const steps: readonly {
   { name: 'console log', statements: consoleTables },
   { name: 'joint changes', statements: jointChanges },
   { name: 'scenarios', statements: scenarioTables },
+  { name: 'achieved', statements: achievedTables },
 ];
 
 /** Brings the tables to what this program expects: all missing steps or none, whoever else starts now. */
