@@ -38,7 +38,7 @@ export class PlanBook {
     scanner: ScannerAbilities,
     quickLooks: boolean,
   ): readonly SlotPlan[] | undefined {
-    const key = `${quickLooks}|${keyOf(request, scanner)}`;
+    const key = `${quickLooks}|${this.keyOf(request, scanner)}`;
     let found = this.plans.get(key);
     if (found === undefined) {
       found = slotPlans(request, scanner, quickLooks ? this.ground : this.strict, slotsMin, {
@@ -50,7 +50,7 @@ export class PlanBook {
   }
 
   fullFor(request: ExamRequest, scanner: ScannerAbilities): SlotPlan | undefined {
-    const key = keyOf(request, scanner);
+    const key = this.keyOf(request, scanner);
     let found = this.full.get(key);
     if (found === undefined) {
       found = fullProtocol(request, scanner, this.ground);
@@ -58,20 +58,20 @@ export class PlanBook {
     }
     return 'cannot' in found ? undefined : found;
   }
-}
 
-/** What a plan depends on: not the number, the day or the note of a request, nor a scanner's name. */
-function keyOf(request: ExamRequest, scanner: ScannerAbilities): string {
-  const { examId, questionIds, tolerance, contrast, transport, b1RmsLimitMicroTesla } = request;
-  return JSON.stringify([
-    examId,
-    questionIds,
-    tolerance,
-    contrast,
-    transport,
-    b1RmsLimitMicroTesla ?? null,
-    scanner.fieldT,
-    scanner.boreCm,
-    scanner.coils,
-  ]);
+  /** What a plan depends on: not the number, the day or the note of a request; of a scanner its field and whether it has the coil. */
+  private keyOf(request: ExamRequest, scanner: ScannerAbilities): string {
+    const { examId, questionIds, tolerance, contrast, transport, b1RmsLimitMicroTesla } = request;
+    const coil = this.ground.library.exams.get(examId)?.coil ?? '';
+    return JSON.stringify([
+      examId,
+      questionIds,
+      tolerance,
+      contrast,
+      transport,
+      b1RmsLimitMicroTesla ?? null,
+      scanner.fieldT,
+      scanner.coils.includes(coil),
+    ]);
+  }
 }
