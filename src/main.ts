@@ -5,6 +5,7 @@ import { pino } from 'pino';
 import { demoFolder, projectFolder } from './cli/files.js';
 import { openDepartment, openGround, openRequests } from './cli/ground.js';
 import { print, printProblems } from './cli/output.js';
+import { withRecords } from './cli/own-records.js';
 import { linearSolver } from './planning/index.js';
 import { openStore } from './store/index.js';
 import { createApp } from './web/app.js';
@@ -22,7 +23,7 @@ const settings = {
 };
 
 const log = pino({ level: 'info' }, pino.destination(2));
-const { ground, problems } = openGround(settings.library);
+const { ground: asWritten, problems } = openGround(settings.library);
 printProblems(problems);
 const department = openDepartment(settings.department);
 const solver = linearSolver({ wallClockMs: 150 });
@@ -32,7 +33,14 @@ const store = await openStore(
     ? { kind: 'sqlite', file: settings.file }
     : { kind: 'postgres', url: settings.databaseUrl },
 );
-const deps = { store, ground, department, solver, now: () => Date.now() };
+const deps = {
+  store,
+  ground: withRecords(asWritten, await store.achieved.list()),
+  writtenPolicy: asWritten.library.policy,
+  department,
+  solver,
+  now: () => Date.now(),
+};
 
 if ((await store.requests.list()).length === 0 && settings.department === undefined) {
   print('First start: planning the demo department ...');

@@ -1,4 +1,5 @@
 import type { Department } from '../day/index.js';
+import type { SitePolicy } from '../exams/index.js';
 import type { ChoiceSolver, PlanningGround } from '../planning/index.js';
 import type { Store } from '../store/index.js';
 import type { Planner } from './planner.js';
@@ -7,6 +8,8 @@ import type { Planner } from './planner.js';
 export interface WebDeps {
   readonly store: Store;
   readonly ground: PlanningGround;
+  /** The policy as its file has it; the ground's may hold the site's own records in the place of priors. */
+  readonly writtenPolicy?: SitePolicy;
   readonly department: Department;
   readonly solver: ChoiceSolver;
   /** Epoch milliseconds. */

@@ -1,7 +1,8 @@
 import type { Command } from 'commander';
 import { gradeMarks } from '../../exams/index.js';
 import { linearSolver, type Plan } from '../../planning/index.js';
-import { openDepartment, openGround, openRequests } from '../ground.js';
+import { openDepartment, openRequests } from '../ground.js';
+import { openPlanningGround } from '../own-records.js';
 import { exitCodes, print, printJson, printProblems } from '../output.js';
 import { planRequests } from '../plan-requests.js';
 import { fitted, minutesOf, percent } from '../text/layout.js';
@@ -26,7 +27,7 @@ export function addCurveCommand(program: Command): void {
         id: string,
         flags: { library?: string; department?: string; json?: true },
       ) => {
-        const { ground } = openGround(flags.library);
+        const ground = await openPlanningGround(flags.library);
         const read = openRequests(file);
         const one = read.requests.filter((r) => r.request.id === id);
         const solver = linearSolver();

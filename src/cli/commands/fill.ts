@@ -17,6 +17,7 @@ import { chooseCurve, type PlanningGround } from '../../planning/index.js';
 
 import type { Department } from '../../day/index.js';
 import { openDepartment, openGround, openRequests, unknownRequests } from '../ground.js';
+import { openPlanningGround } from '../own-records.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
 import { fitted, wrapped } from '../text/layout.js';
 
@@ -55,13 +56,17 @@ Examples:
   fill data-demo/requests.csv
   fill data-demo/requests.csv --all --full`,
     )
-    .action((file: string, flags: FillFlags) => {
-      process.exitCode = fillFile(file, flags);
+    .action(async (file: string, flags: FillFlags) => {
+      process.exitCode = fillFile(file, flags, await openPlanningGround(flags.library));
     });
 }
 
 /** Fills from a file and prints the proposal; returns the exit code. */
-export function fillFile(file: string, flags: FillFlags): number {
+export function fillFile(
+  file: string,
+  flags: FillFlags,
+  ground: PlanningGround = openGround(flags.library).ground,
+): number {
   const iterations = Number(flags.iterations);
   if (!Number.isInteger(iterations) || iterations < 1 || iterations > 1_000_000) {
     printProblems([
@@ -75,7 +80,6 @@ export function fillFile(file: string, flags: FillFlags): number {
     ]);
     return exitCodes.usage;
   }
-  const { ground } = openGround(flags.library);
   const department = openDepartment(flags.department);
   const read = openRequests(file);
   const wanted = (r: BookedRequest) =>

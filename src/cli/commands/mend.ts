@@ -10,8 +10,10 @@ import {
   type MendProblem,
   type WaitingRequest,
 } from '../../day/index.js';
+import type { PlanningGround } from '../../planning/index.js';
 import { ProblemError } from '../../shared/index.js';
 import { openDepartment, openGround, openRequests } from '../ground.js';
+import { openPlanningGround } from '../own-records.js';
 import { readMendFlags, type MendAsked, type MendFlags } from '../mend-asked.js';
 import { exitCodes, print, printJson, printProblems } from '../output.js';
 import { mendText } from '../text/mend-text.js';
@@ -51,8 +53,8 @@ Examples:
   mend data-demo/requests.csv --overrun R-103 --minutes 40
   mend data-demo/requests.csv --emergency R-159 --now 10:05`,
     )
-    .action((file: string, flags: MendFlags) => {
-      process.exitCode = mendFile(file, flags);
+    .action(async (file: string, flags: MendFlags) => {
+      process.exitCode = mendFile(file, flags, await openPlanningGround(flags.library));
     });
 }
 
@@ -64,8 +66,11 @@ function noShowOption(): Option {
 }
 
 /** Mends the day in a file and prints the proposals; returns the exit code. */
-export function mendFile(file: string, flags: MendFlags): number {
-  const { ground } = openGround(flags.library);
+export function mendFile(
+  file: string,
+  flags: MendFlags,
+  ground: PlanningGround = openGround(flags.library).ground,
+): number {
   const planned = openDepartment(flags.department);
   const read = openRequests(file);
   const asked = tried(() => readMendFlags(flags, read, planned, file));

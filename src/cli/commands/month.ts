@@ -9,7 +9,8 @@ import {
   type Scenario,
 } from '../../throughput/index.js';
 import { demoFolder, readText } from '../files.js';
-import { openDepartment, openGround, openRequests } from '../ground.js';
+import { openDepartment, openRequests } from '../ground.js';
+import { openPlanningGround } from '../own-records.js';
 import { runScenarios } from '../month-run.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
 import { monthCsv } from '../text/month-csv.js';
@@ -64,7 +65,7 @@ export function addMonthCommand(program: Command): void {
 }
 
 async function month(file: string | undefined, flags: MonthFlags): Promise<number> {
-  const { ground } = openGround(flags.library);
+  const ground = await openPlanningGround(flags.library);
   const department = openDepartment(flags.department);
   const read = openRequests(flags.requests ?? join(demoFolder, 'requests.csv'));
   printProblems(read.problems);

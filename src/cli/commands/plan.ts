@@ -1,6 +1,7 @@
 import type { Command } from 'commander';
 import { linearSolver } from '../../planning/index.js';
-import { openDepartment, openGround, openRequests, unknownRequests } from '../ground.js';
+import { openDepartment, openRequests, unknownRequests } from '../ground.js';
+import { openPlanningGround } from '../own-records.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
 import { planRequests, whenWords, type PlannedList } from '../plan-requests.js';
 import { planBrief, planText } from '../text/plan-text.js';
@@ -48,7 +49,7 @@ Examples:
 
 /** Plans a file and prints it; returns the exit code. */
 export async function planFile(file: string, flags: PlanFlags): Promise<number> {
-  const { ground } = openGround(flags.library);
+  const ground = await openPlanningGround(flags.library);
   const department = openDepartment(flags.department);
   const read = openRequests(file);
   const wanted =

@@ -8,12 +8,10 @@ import { ProblemError } from '../../shared/index.js';
 import { happeningSchema, type StoredBooking, type Tap } from '../../store/index.js';
 import { gone } from '../board-fields.js';
 import type { PageDeps } from '../deps.js';
+import { isBySlot } from '../exam-clock.js';
 import { instantOf } from '../site-time.js';
 import { consolePage } from '../view-models/console-page.js';
 import { whoIs } from '../who.js';
-
-/** Exams further than this from their slot (the demo's, say) run by the clock of their first tap, ms. */
-const farMs = 12 * 3_600_000;
 
 const tapsBody = z.strictObject({
   taps: z
@@ -52,7 +50,7 @@ export function consoleRoutes(deps: PageDeps): Router {
   /** Zero of the exam's clock: the slot's start, or the first tap where the slot is another day's. */
   async function zeroOf(booking: StoredBooking): Promise<number> {
     const slotMs = instantOf(booking.date, booking.startMin, deps.department.zone);
-    if (Math.abs(deps.now() - slotMs) < farMs) return slotMs;
+    if (isBySlot(deps.now(), slotMs)) return slotMs;
     return (await deps.store.consoleLog.zeroMs(booking.id)) ?? deps.now();
   }
 

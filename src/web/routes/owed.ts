@@ -1,6 +1,7 @@
 import { Router } from 'express';
 import { grades, gradeWords, type Grade } from '../../exams/index.js';
 import { ProblemError } from '../../shared/index.js';
+import { achievedOf } from '../achieved-of.js';
 import type { PageDeps } from '../deps.js';
 import { dayFrom, siteDate } from '../site-time.js';
 import { takeTold, tell } from '../told.js';
@@ -119,6 +120,7 @@ export function owedRoutes(deps: PageDeps): Router {
           name: q.name,
           grade: readGrade(form[`grade_${q.id}`], q.name),
         })),
+        achieved: await achievedOf(deps, booking, stored),
       },
       whoIs(request),
       deps.now(),
