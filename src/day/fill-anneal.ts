@@ -17,6 +17,8 @@ export class Anneal {
   private readonly packing: Packing;
   private readonly draw: Draw;
   private readonly roomPrices: Float64Array;
+  /** Rooms in which each request has offers. */
+  private readonly roomsFor: readonly (readonly number[])[];
   private readonly scale: number;
   private readonly best: { value: number; where: Int32Array; option: Int32Array };
   private readonly touched: number[] = [];
@@ -38,6 +40,11 @@ export class Anneal {
     this.scale = scale;
     this.draw = drawFrom(packing, prices, lossShare * scale);
     this.roomPrices = Float64Array.from(packing.rooms, (m) => prices.stepPrices[m.stretch]!);
+    this.roomsFor = Array.from(packing.where, (_, r) =>
+      packing.rooms.flatMap((_, m) =>
+        packing.firstOption(r, m) < packing.endOption(r, m) ? [m] : [],
+      ),
+    );
     this.isTouched = new Uint8Array(packing.rooms.length);
     this.isOut = new Uint8Array(packing.where.length);
     this.key = new Float64Array(packing.where.length);
@@ -145,9 +152,7 @@ export class Anneal {
       let room = -1;
       let option = -1;
       let most = -Infinity;
-      const many = isOut[r] === 1 ? packing.rooms.length : this.touched.length;
-      for (let i = 0; i < many; i++) {
-        const m = isOut[r] === 1 ? i : this.touched[i]!;
+      for (const m of isOut[r] === 1 ? this.roomsFor[r]! : this.touched) {
         if (random() < blink) continue;
         const found = this.bestOption(r, m, level, most);
         if (found < 0) continue;

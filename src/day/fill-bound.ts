@@ -1,4 +1,5 @@
-import { noonStep, type Ground, type SlotOption } from './fill-problem.js';
+import type { Ground, SlotOption } from './fill-problem.js';
+import { pathTables, relaxed } from './fill-paths.js';
 
 export type BoundTier = 'diagnostic' | 'targeted' | 'screening';
 
@@ -20,13 +21,15 @@ const priceUnit = 1 / 1024;
  * bound of the time-indexed linear programme, because a longest path has whole optima of its own.
  * Teams, coils and the order of tiers are left out, which can only raise the bound.
  *
- * @param reached a worth known to be reachable, for the step length only
+ * @param reached a worth known to be reachable, for the step length and to end when the bound meets it
+ * @param from request prices to begin with, of an earlier bound of the same tier
  */
 export function upperBound(
   ground: Ground,
   tier: BoundTier,
   reached: number,
   rounds = 400,
+  from?: readonly number[],
 ): UpperBound {
   const worth = (option: SlotOption) => option[tier];
   const count = ground.problem.waiting.length;
@@ -41,13 +44,13 @@ export function upperBound(
   let found = Infinity;
   let bound = everybody;
   let best: readonly number[] = most;
-  let prices = most.map((m) => Math.round(m / 2 / priceUnit) * priceUnit);
+  let prices = from ?? most.map((m) => Math.round(m / 2 / priceUnit) * priceUnit);
   let step = 1;
   let since = 0;
   let direction = new Array<number>(count).fill(0);
-  const tables = lineTables(ground);
+  const tables = pathTables(ground, worth);
   for (let round = 0; round < rounds && Math.floor(bound + 1e-9) > reached; round++) {
-    const { value, uses } = relaxed(ground, worth, prices, tables);
+    const { value, uses } = relaxed(tables, prices);
     if (value < found) {
       since = value < found * (1 - 1e-4) ? 0 : since + 1;
       found = value;
@@ -72,99 +75,14 @@ export function upperBound(
       return Math.max(0, Math.min(most[r]!, units * priceUnit));
     });
   }
-  const { gains } = relaxed(ground, worth, best, tables);
+  const { gains } = relaxed(tables, best);
   return {
     bound: Math.floor(bound + 1e-9),
     requestPrices: best,
-    stepPrices: gains.map((gain, s) => {
-      const { from, to } = ground.stretches[s]!;
-      return gain / (to - from);
-    }),
+    stepPrices: ground.stretches.map((stretch, s) => gains[s]! / (stretch.to - stretch.from)),
   };
 }
 
 /** Rounds without progress before steps become shorter, and the share of the last direction kept. */
 const patience = 15;
 const kept = 0.6;
-
-interface LineTable {
-  readonly longest: number;
-}
-
-function lineTables(ground: Ground): readonly LineTable[] {
-  return ground.lines.map((line) => ({
-    longest: Math.max(
-      0,
-      ...line.windows.flatMap((w) => (w === undefined ? [] : w.options.map((o) => o.steps))),
-    ),
-  }));
-}
-
-/** Worth of the relaxed problem under these prices, and how often it uses each request. */
-function relaxed(
-  ground: Ground,
-  worth: (option: SlotOption) => number,
-  prices: readonly number[],
-  tables: readonly LineTable[],
-): {
-  readonly value: number;
-  readonly uses: readonly number[];
-  readonly gains: readonly number[];
-} {
-  const uses = new Array<number>(prices.length).fill(0);
-  const gains = new Array<number>(ground.stretches.length).fill(0);
-  let value = prices.reduce((a, b) => a + b, 0);
-  ground.lines.forEach((line, l) => {
-    const stretches = ground.ofLine[l] ?? [];
-    if (stretches.length === 0) return;
-    const { longest } = tables[l]!;
-    // Best gain per length, before noon and from noon on.
-    const gain = [new Float64Array(longest + 1), new Float64Array(longest + 1)];
-    const who = [new Int32Array(longest + 1).fill(-1), new Int32Array(longest + 1).fill(-1)];
-    line.windows.forEach((w, r) => {
-      if (w === undefined) return;
-      for (const option of w.options) {
-        const g = w.factor * worth(option) - prices[r]!;
-        if (g <= 0) continue;
-        for (let half = 0; half < 2; half++) {
-          const may = half === 0 ? w.release < noonStep : w.last >= noonStep;
-          if (may && g > gain[half]![option.steps]!) {
-            gain[half]![option.steps] = g;
-            who[half]![option.steps] = r;
-          }
-        }
-      }
-    });
-    for (const s of stretches) {
-      const { from, to } = ground.stretches[s]!;
-      const best = new Float64Array(to - from + 1);
-      const pick = new Int32Array(to - from + 1);
-      for (let t = to - 1; t >= from; t--) {
-        const half = t < noonStep ? 0 : 1;
-        let top = best[t + 1 - from]!;
-        let length = 0;
-        const room = Math.min(longest, to - t);
-        for (let n = 1; n <= room; n++) {
-          const g = gain[half]![n]!;
-          if (g > 0 && g + best[t + n - from]! > top) {
-            top = g + best[t + n - from]!;
-            length = n;
-          }
-        }
-        best[t - from] = top;
-        pick[t - from] = length;
-      }
-      value += best[0]!;
-      gains[s] = best[0]!;
-      for (let t = from; t < to;) {
-        const n = pick[t - from]!;
-        if (n === 0) t++;
-        else {
-          uses[who[t < noonStep ? 0 : 1]![n]!]! += 1;
-          t += n;
-        }
-      }
-    }
-  });
-  return { value, uses, gains };
-}

@@ -1,7 +1,7 @@
 import type { Board } from './fill-board.js';
-import { upperBound } from './fill-bound.js';
+import { upperBound, type BoundTier, type UpperBound } from './fill-bound.js';
 import { fillExactly } from './fill-exact.js';
-import type { FillObjective } from './fill-objective.js';
+import { nothingFilled, type FillObjective } from './fill-objective.js';
 import { layOut, stepMin, type FillProblem, type Ground } from './fill-problem.js';
 import { searchFill } from './fill-search.js';
 import { whyHere, whyWaiting, type NotPlaced } from './fill-why.js';
@@ -74,26 +74,30 @@ export function* fill(
   } = options;
   const ground = layOut(problem);
   // A bound before there is an answer: its prices lead the search.
-  const prices = upperBound(ground, 'diagnostic', 0, boundRounds);
-  const search = searchFill(ground, { iterations, random, reportEvery, prices });
-  let bound: FillBound | undefined;
+  const bounds = boundsOf(ground, nothingFilled, boundRounds);
+  const early = boundsSay(bounds);
+  const search = searchFill(ground, { iterations, random, reportEvery, prices: bounds.diagnostic });
   let step = search.next();
   while (step.done !== true) {
     const { iteration, of, best, objective } = step.value;
-    // The bound wants a good answer to aim at: first guess at the start, again at the end.
-    bound ??= boundOf(ground, objective, boundRounds);
-    const standing = bound;
     yield {
       iteration,
       of,
       objective,
-      bound: standing,
-      proposal: () => proposalOf(ground, best, objective, standing, searchWords(iteration)),
+      bound: early,
+      proposal: () =>
+        proposalOf(
+          ground,
+          best,
+          objective,
+          boundsSay(boundsOf(ground, objective, boundRounds, bounds)),
+          searchWords(iteration),
+        ),
     };
     step = search.next();
   }
   const { best, objective } = step.value;
-  bound = tighter(bound, boundOf(ground, objective, boundRounds));
+  const bound = boundsSay(boundsOf(ground, objective, boundRounds, bounds));
   const exact =
     problem.waiting.length <= exactUpTo && exactNodes > 0
       ? fillExactly(ground, best, exactNodes)
@@ -105,7 +109,6 @@ export function* fill(
       exact.best,
       exact.objective,
       {
-        ...tighter(bound, bound),
         diagnostic,
         targeted: Math.max(targeted, bound.targeted),
         screening: Math.max(screening, bound.screening),
@@ -123,7 +126,7 @@ export function* fill(
 }
 
 const searchWords = (iterations: number) =>
-  `ruin and recreate, ${iterations} iterations, held against a Lagrangian bound`;
+  `annealing and ruin and recreate, ${iterations} iterations, held against a Lagrangian bound`;
 
 /** Runs `fill` to its end. */
 export function fillAll(problem: FillProblem, options: FillOptions): FillProposal {
@@ -133,22 +136,35 @@ export function fillAll(problem: FillProblem, options: FillOptions): FillProposa
   return step.value;
 }
 
-function boundOf(ground: Ground, o: FillObjective, rounds: number): FillBound {
+type Bounds = Readonly<Record<BoundTier, UpperBound>>;
+
+/** Rounds for the tiers after the first: they are not what the search is held against. */
+const laterShare = 0.25;
+
+/** Bounds of the three tiers; begun anew from earlier prices with a good answer to aim at, they come down further. */
+function boundsOf(
+  ground: Ground,
+  reached: FillObjective,
+  rounds: number,
+  earlier?: Bounds,
+): Bounds {
+  const one = (tier: BoundTier, many: number): UpperBound => {
+    const before = earlier?.[tier];
+    const now = upperBound(ground, tier, reached[tier], many, before?.requestPrices);
+    return before !== undefined && before.bound <= now.bound ? before : now;
+  };
   return {
-    diagnostic: upperBound(ground, 'diagnostic', o.diagnostic, rounds).bound,
-    targeted: upperBound(ground, 'targeted', o.targeted, rounds).bound,
-    screening: upperBound(ground, 'screening', o.screening, rounds).bound,
+    diagnostic: one('diagnostic', rounds),
+    targeted: one('targeted', Math.ceil(laterShare * rounds)),
+    screening: one('screening', Math.ceil(laterShare * rounds)),
   };
 }
 
-const tighter = (a: FillBound | undefined, b: FillBound): FillBound =>
-  a === undefined
-    ? b
-    : {
-        diagnostic: Math.min(a.diagnostic, b.diagnostic),
-        targeted: Math.min(a.targeted, b.targeted),
-        screening: Math.min(a.screening, b.screening),
-      };
+const boundsSay = (bounds: Bounds): FillBound => ({
+  diagnostic: bounds.diagnostic.bound,
+  targeted: bounds.targeted.bound,
+  screening: bounds.screening.bound,
+});
 
 /** The bookings a board stands for, in order of time and scanner. */
 export function bookingsOf(ground: Ground, board: Board): readonly (Booking & { offer: Offer })[] {
