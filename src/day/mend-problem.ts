@@ -56,6 +56,9 @@ export interface Move {
   readonly because: string;
 }
 
+/** Whoever is shifted by more than this is moved far: a proposal that spares them stands beside the first. */
+export const farShiftMin = 120;
+
 export interface Repair {
   readonly moves: readonly Move[];
   /** People whose place is gone and who get none on the planned days. */
@@ -75,6 +78,8 @@ export interface Repair {
   readonly fewest: boolean;
   /** Whether slots may have been shortened at the cost of answers. */
   readonly shorterSlots: boolean;
+  /** Nobody was to be shifted by more than this, at the cost of more people moved; absent: no limit. */
+  readonly shiftLimitMin?: number;
 }
 
 export interface MendOutcome {

@@ -1,6 +1,7 @@
 import { visitBreaks } from './fill-check.js';
 import { priorityWorth, stepMin, type WaitingRequest } from './fill-problem.js';
 import type { MendGrid } from './mend-grid.js';
+import type { Repair } from './mend-problem.js';
 import type { Offer } from './offers.js';
 import type { Booking, Department } from './scanners.js';
 
@@ -32,6 +33,9 @@ export interface Rearranged {
   readonly nodes: number;
 }
 
+/** What a repair may do. */
+export type RepairRules = Pick<Repair, 'shorterSlots' | 'shiftLimitMin'>;
+
 interface Place {
   readonly to: Booking;
   readonly shiftMin: number;
@@ -52,14 +56,19 @@ export function rearrange(
   movers: readonly Mover[],
   displaced: readonly number[],
   grid: MendGrid,
-  shorterSlots: boolean,
+  { shorterSlots, shiftLimitMin = Infinity }: RepairRules,
   nodeBudget: number,
 ): Rearranged {
   const places = new Map<number, readonly Place[]>();
   const placesOf = (m: number): readonly Place[] => {
     let found = places.get(m);
     if (found === undefined)
-      places.set(m, (found = placesFor(department, movers[m]!, shorterSlots)));
+      places.set(
+        m,
+        (found = placesFor(department, movers[m]!, shorterSlots).filter(
+          (p) => p.shiftMin <= shiftLimitMin,
+        )),
+      );
     return found;
   };
   let nodes = 0;

@@ -1,5 +1,5 @@
 import { clock } from './conflicts.js';
-import type { Repair } from './mend-problem.js';
+import { farShiftMin, type Repair } from './mend-problem.js';
 import type { Booking, Department } from './scanners.js';
 
 export const scannerName = (id: string, department: Department): string =>
@@ -82,18 +82,16 @@ export function disturbanceWords(repair: Repair): string {
   return sentence(parts.join('; '));
 }
 
-const farMin = 120;
-
 /** Fewest people is not always what the one who moves far would choose; the way out is by hand. */
 export function farWords(repair: Repair): string {
   const far = repair.moves.filter(
     ({ from, to }) =>
       from !== undefined &&
-      (from.date !== to.date || Math.abs(from.startMin - to.startMin) > farMin),
+      (from.date !== to.date || Math.abs(from.startMin - to.startMin) > farShiftMin),
   );
   if (far.length === 0) return '';
   const ids = far.map((m) => m.requestId).join(', ');
-  return `As few people as possible are moved, even where one of them then moves far (${ids}). If that is too far, move somebody else on the day board first and ask again.`;
+  return `As few people as possible are moved, even where one of them then moves far (${ids}). If that is too far, look at a further proposal where there is one, or move somebody else on the day board first and ask again.`;
 }
 
 /**
@@ -118,3 +116,16 @@ export const proofWords = (repair: Repair): string =>
   repair.fewest
     ? 'Proved: no other way of this kind leaves fewer people without a place or moves fewer.'
     : 'Not proved: the search stopped at its limit, and a way that moves fewer people may exist.';
+
+const ordinals = ['First', 'Second', 'Third'];
+
+/** What a proposal is called among the others. */
+export function proposalHeading(repair: Repair, n: number, of: number): string {
+  if (of === 1) return 'Proposal';
+  const which = repair.shorterSlots
+    ? 'shorter slots, fewer people disturbed, some answers lost'
+    : repair.shiftLimitMin !== undefined
+      ? `nobody moves by more than ${repair.shiftLimitMin} minutes, more people move`
+      : 'nobody loses an answer, fewest people move';
+  return `${ordinals[n] ?? ''} proposal: ${which}`;
+}

@@ -1,10 +1,22 @@
 import { clock } from './conflicts.js';
 import { stepMin } from './fill-problem.js';
 import { MendGrid } from './mend-grid.js';
-import type { MendOutcome, MendProblem, Move, Repair } from './mend-problem.js';
+import {
+  farShiftMin,
+  type MendOutcome,
+  type MendProblem,
+  type Move,
+  type Repair,
+} from './mend-problem.js';
 import { bare, noShow } from './mend-no-show.js';
 import { changedAnswers, samePlace, scannerName } from './mend-words.js';
-import { offerAt, rearrange, type Mover, type Rearranged } from './mend-search.js';
+import {
+  offerAt,
+  rearrange,
+  type Mover,
+  type Rearranged,
+  type RepairRules,
+} from './mend-search.js';
 import type { Booking, Department } from './scanners.js';
 
 export interface MendOptions {
@@ -31,24 +43,39 @@ export function onTheWayIn(
   );
 }
 
+/** Limits on everybody's shift that are tried, tightest first. */
+const shiftLimitsMin = [60, farShiftMin];
+
 /**
  * The least disturbing repairs after an event: fewest without a place, fewest moved, least shift; nobody on the way in is
- * moved. A second proposal, with shorter slots at the cost of answers, stands beside the first where it disturbs fewer.
- * Nothing is applied.
+ * moved. Where that moves somebody far, a proposal in which nobody moves far stands beside it, with more people moved;
+ * and one with shorter slots at the cost of answers, where it disturbs fewer. Nothing is applied.
  */
 export function mend(problem: MendProblem, options: MendOptions = {}): MendOutcome {
   if (problem.event.kind === 'no-show') return noShow(problem, problem.event.requestId);
-  const kept = repair(problem, false, options.nodeBudget ?? 4000);
-  if (kept.peopleMoved < 2 && kept.withoutPlace.length === 0) return { proposals: [kept] };
-  const shorter = repair(problem, true, options.nodeBudget ?? 4000);
+  const nodeBudget = options.nodeBudget ?? 4000;
+  const kept = repair(problem, { shorterSlots: false }, nodeBudget);
+  const nearer = nearerThan(kept, problem, nodeBudget);
+  const beside = nearer === undefined ? [kept] : [kept, nearer];
+  if (kept.peopleMoved < 2 && kept.withoutPlace.length === 0) return { proposals: beside };
+  const shorter = repair(problem, { shorterSlots: true }, nodeBudget);
   const disturbsFewer =
     shorter.withoutPlace.length < kept.withoutPlace.length ||
     (shorter.withoutPlace.length === kept.withoutPlace.length &&
       shorter.peopleMoved < kept.peopleMoved);
-  return { proposals: disturbsFewer ? [kept, shorter] : [kept] };
+  return { proposals: disturbsFewer ? [...beside, shorter] : beside };
 }
 
-function repair(problem: MendProblem, shorterSlots: boolean, nodeBudget: number): Repair {
+/** A repair in which nobody moves far and nobody more is left without a place, where the first moves somebody far. */
+function nearerThan(kept: Repair, problem: MendProblem, nodeBudget: number): Repair | undefined {
+  const longest = Math.max(0, ...kept.moves.map((m) => (m.from === undefined ? 0 : m.shiftMin)));
+  if (longest <= farShiftMin) return undefined;
+  return shiftLimitsMin
+    .map((shiftLimitMin) => repair(problem, { shorterSlots: false, shiftLimitMin }, nodeBudget))
+    .find((r) => r.withoutPlace.length <= kept.withoutPlace.length);
+}
+
+function repair(problem: MendProblem, rules: RepairRules, nodeBudget: number): Repair {
   const { department, event, visits } = problem;
   const grid = new MendGrid(department);
   const movers: Mover[] = visits.map((visit) => ({
@@ -143,8 +170,8 @@ function repair(problem: MendProblem, shorterSlots: boolean, nodeBudget: number)
     else grid.mark(visit, visit.team, v);
   });
 
-  const arranged = rearrange(department, movers, displaced, grid, shorterSlots, nodeBudget);
-  return described(problem, movers, arranged, { stuck, waitOnSite, shorterSlots });
+  const arranged = rearrange(department, movers, displaced, grid, rules, nodeBudget);
+  return described(problem, movers, arranged, { stuck, waitOnSite, ...rules });
 }
 
 /** The first start from the own one on at which the own scanner has room among what is closed. */
@@ -160,7 +187,7 @@ function described(
   problem: MendProblem,
   movers: readonly Mover[],
   { replaced, dropped, fewest }: Rearranged,
-  rest: Pick<Repair, 'stuck' | 'waitOnSite' | 'shorterSlots'>,
+  rest: Pick<Repair, 'stuck' | 'waitOnSite'> & RepairRules,
 ): Repair {
   const moves = replaced.map(({ mover: m, to, shiftMin, pushedBy }): Move => {
     const { request, home } = movers[m]!;

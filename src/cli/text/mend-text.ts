@@ -7,6 +7,7 @@ import {
   moveWords,
   placeWords,
   proofWords,
+  proposalHeading,
   scannerName,
   sentence,
   shiftWords,
@@ -41,12 +42,7 @@ export function mendText(outcome: MendOutcome, problem: MendProblem): string {
 function proposalLines(repair: Repair, n: number, of: number, problem: MendProblem): string[] {
   const { department, now } = problem;
   const at = (place: Parameters<typeof placeWords>[0]) => placeWords(place, department, now.date);
-  const heading =
-    of === 1
-      ? 'Proposal'
-      : n === 0
-        ? 'First proposal: nobody loses an answer'
-        : 'Second proposal: shorter slots, fewer people disturbed, some answers lost';
+  const heading = proposalHeading(repair, n, of);
   const person = (id: string, ...words: string[]) => [
     ` ${colour.bold(id)}`,
     ...words.map((w) => wrapped(w, '        ')),

@@ -6,6 +6,7 @@ import {
   peopleWords,
   placeWords,
   proofWords,
+  proposalHeading,
   samePlace,
   scannerName,
   sentence,
@@ -56,12 +57,7 @@ export function mendViews(
     words,
   });
   return outcome.proposals.map((repair, n) => ({
-    heading:
-      outcome.proposals.length === 1
-        ? 'Proposal'
-        : n === 0
-          ? 'First proposal: nobody loses an answer'
-          : 'Second proposal: shorter slots, fewer people disturbed, some answers lost',
+    heading: proposalHeading(repair, n, outcome.proposals.length),
     summary: disturbanceWords(repair),
     proof: proofWords(repair),
     far: farWords(repair),
