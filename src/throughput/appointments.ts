@@ -11,6 +11,8 @@ export interface Appointment {
 
 interface Stretch {
   readonly scanner: number;
+  /** Which stretch of the scanner's day. */
+  readonly number: number;
   readonly from: number;
   readonly to: number;
   used: number;
@@ -26,7 +28,7 @@ interface Stretch {
 export function bookDay(list: Patient[], department: SimDepartment): readonly Appointment[] {
   const { scanners, kinds, bufferMin } = department;
   const stretches = scanners.flatMap(({ open }, scanner) =>
-    open.map(([from, to]): Stretch => ({ scanner, from, to, used: 0, booked: [] })),
+    open.map(([from, to], number): Stretch => ({ scanner, number, from, to, used: 0, booked: [] })),
   );
   const shortest = shortestSlot(department);
   const left: Patient[] = [];
@@ -75,10 +77,18 @@ export function bookDay(list: Patient[], department: SimDepartment): readonly Ap
     }
   }
 
-  function timesOf({ scanner, from, booked }: Stretch): readonly Appointment[] {
+  function timesOf({
+    scanner,
+    from,
+    booked,
+    number: stretchNumber,
+  }: Stretch): readonly Appointment[] {
     const full = booked.filter((b) => b.slotMin > 0);
-    if (department.groupByCoil)
-      full.sort((a, b) => kinds[a.patient.kind]!.coil - kinds[b.patient.kind]!.coil);
+    if (department.groupByCoil) {
+      // Every other stretch the other way round: it begins with the coil that the one before ended with.
+      const way = stretchNumber % 2 === 0 ? 1 : -1;
+      full.sort((a, b) => way * (kinds[a.patient.kind]!.coil - kinds[b.patient.kind]!.coil));
+    }
     let at = from;
     const times = full.map(({ patient, slotMin }): Appointment => {
       const startMin = at;
