@@ -34,6 +34,7 @@ const pages = [
   '/library',
   '/library/exams/brain-general',
   '/library/sequences/head-ax-t2-ss-half?field=3',
+  '/learning',
   '/policy',
   '/methods',
   '/console/R-102.1',
