@@ -1,12 +1,13 @@
 import { Router } from 'express';
-import { clock } from '../../day/index.js';
 import { ProblemError } from '../../shared/index.js';
 import type { StoredRequest } from '../../store/index.js';
 import type { PageDeps } from '../deps.js';
-import { proposeFill } from '../fill-proposal.js';
+import { daysAsked } from '../fill-asked.js';
+import { proposeQuickly } from '../fill-proposal.js';
 import { placeRequest, type WantedPlace } from '../place-request.js';
-import { dayFrom, isDay, siteDate } from '../site-time.js';
+import { isDay } from '../site-time.js';
 import { takeTold, tell } from '../told.js';
+import { fillView, searchLengths } from '../view-models/fill-page.js';
 import { whoIs } from '../who.js';
 
 /** Fill: a proposal for everybody who waits; the scheduler accepts all, some or none of it. */
@@ -16,28 +17,17 @@ export function fillRoutes(deps: PageDeps): Router {
 
   router.get('/fill', async (request, response) => {
     const all = await store.requests.list();
-    const waiting = all.filter((r) => r.status === 'waiting');
-    const days = daysAsked(request.query['from'], request.query['until']);
-    const asked = request.query['propose'] === '1' && waiting.length > 0;
-    const bookings = asked
-      ? await store.bookings.listBetween(days[0]!, days[days.length - 1]!)
-      : [];
-    const made = asked
-      ? await proposeFill(deps, days, waiting, bookings, new Map(all.map((r) => [r.id, r])))
-      : undefined;
+    const waitingCount = all.filter((r) => r.status === 'waiting').length;
+    const days = daysAsked(deps, request.query['from'], request.query['until']);
+    const asked = request.query['propose'] === '1' && waitingCount > 0;
     response.render('fill', {
       title: 'Fill the days',
       from: days[0],
       until: days[days.length - 1],
-      waitingCount: waiting.length,
+      waitingCount,
+      searchLengths,
       told: takeTold(request, response),
-      proposal: made?.proposal,
-      placements: made?.proposal.placements.map((p) => ({
-        ...p,
-        start: clock(p.startMin),
-        scanner: department.scanners.find((s) => s.id === p.scannerId)?.name ?? p.scannerId,
-        value: [p.requestId, p.scannerId, p.date, p.startMin, p.slotMin].join('|'),
-      })),
+      proposed: asked ? fillView(await proposeQuickly(deps, days), department) : undefined,
     });
   });
 
@@ -93,19 +83,6 @@ export function fillRoutes(deps: PageDeps): Router {
       if (error instanceof ProblemError) return error.problem.limit;
       throw error;
     }
-  }
-
-  /** The department's coming days, or the ones asked for, two weeks at most. */
-  function daysAsked(from: unknown, until: unknown): readonly string[] {
-    const today = siteDate(deps.now(), department.zone);
-    const own = department.days.filter((d) => d >= today);
-    const first = typeof from === 'string' && isDay(from) ? from : (own[0] ?? today);
-    const last =
-      typeof until === 'string' && isDay(until) && until >= first
-        ? until
-        : (own[own.length - 1] ?? first);
-    const days = Array.from({ length: 14 }, (_, n) => dayFrom(first, n));
-    return days.filter((d) => d <= last || d === first);
   }
 
   return router;
