@@ -10,6 +10,7 @@ import { Planner } from './planner.js';
 import { boardRoutes } from './routes/board.js';
 import { bookingRoutes } from './routes/bookings.js';
 import { consoleRoutes } from './routes/console.js';
+import { fillSearchRoutes } from './routes/fill-search.js';
 import { fillRoutes } from './routes/fill.js';
 import { learningRoutes } from './routes/learning.js';
 import { libraryRoutes } from './routes/library.js';
@@ -73,6 +74,7 @@ export function createApp(given: WebDeps): Express {
   app.use(planSheetRoutes(deps));
   app.use(placesRoutes(deps));
   app.use(fillRoutes(deps));
+  app.use(fillSearchRoutes(deps));
   app.use(mendRoutes(deps));
   app.use(slotAdviceRoutes(deps, runs));
   app.use(monthScenarioRoutes(deps));
