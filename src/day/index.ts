@@ -15,6 +15,7 @@ export { type NotPlaced, type WayIn } from './fill-why.js';
 export { brokenRules, visitBreaks } from './fill-check.js';
 export { takenPlace, waitingRequest } from './waiting-request.js';
 export * from './mend-problem.js';
-export { mend, onTheWayIn, type MendOptions } from './mend.js';
+export { mend, type MendOptions } from './mend.js';
+export { onTheWayIn } from './mend-moment.js';
 export * from './mend-words.js';
 export { repeatableStream } from './repeatable-stream.js';
