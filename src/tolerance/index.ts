@@ -11,3 +11,4 @@ export * from './learning.js';
 export type { LearnedTime, TimeEstimate } from './learned-times.js';
 export * from './learned-policy.js';
 export { share, spanWords } from './learned-words.js';
+export * from './learned-standing.js';

@@ -23,9 +23,9 @@ export function estimateSentence({ prior, records, reading }: Omit<SpanEstimate,
   const limits = `(${rangeWords(low, high)})`;
   if (saidBy !== undefined) {
     const part = at >= 1 ? 'in full' : `to ${share(at)}`;
-    return `of ${records} ${words} about ${about[kind]} ${share(chance)} came true ${part} ${limits}, the policy counts on ${share(priorChance)}`;
+    return `of ${records} ${words} about ${about[kind]}, ${share(chance)} came true ${part} ${limits}; the policy's own figure is ${share(priorChance)}`;
   }
-  return `of ${records} ${words} who were not asked, ${share(chance)} ${did[kind]} for ${spanWords(at)} ${limits}, the prior says ${share(priorChance)}`;
+  return `of ${records} ${words} who were not asked, ${share(chance)} ${did[kind]} for ${spanWords(at)} ${limits}; the policy's own figure is ${share(priorChance)}`;
 }
 
 export function timeSentence({
@@ -40,14 +40,14 @@ export function timeSentence({
   if (records === 0) return 'no record yet';
   if (achieved === undefined || low === undefined || high === undefined)
     return 'one record, too few for a mean';
-  const what = kind === 'entry' ? 'getting in took' : 'from getting in to the last sequence took';
+  const what = kind === 'entry' ? 'getting in took' : 'getting in and the exam took';
   const against =
     prior !== undefined
-      ? `, the policy plans ${spanWords(prior.meanS)} and ${prior.cv}`
+      ? `; the policy counts on ${spanWords(prior.meanS)}, varying by ${share(prior.cv)}`
       : plannedMeanS !== undefined
-        ? `, planned were ${spanWords(plannedMeanS)}`
+        ? `; planned were ${spanWords(plannedMeanS)}`
         : '';
-  return `in ${records} exams ${what} ${spanWords(achieved.meanS)} on average (${spanWords(low)} to ${spanWords(high)}), coefficient of variation ${achieved.cv.toFixed(2)}${against}`;
+  return `in ${records} exams ${what} ${spanWords(achieved.meanS)} on average (${spanWords(low)} to ${spanWords(high)}), varying by ${share(achieved.cv)} of that (standard deviation)${against}`;
 }
 
 /** Seconds below two minutes, minutes from there on, in three digits that count. */

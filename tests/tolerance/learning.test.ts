@@ -66,7 +66,7 @@ describe('an estimate from records', () => {
     expect(estimate.reading?.low).toBeCloseTo(0.755, 3);
     expect(estimate.reading?.high).toBeCloseTo(0.961, 3);
     expect(estimate.says).toBe(
-      'of 40 outpatients who were not asked, 90 % kept still for 25 min (76 to 96 %), the prior says 93 %',
+      "of 40 outpatients who were not asked, 90 % kept still for 25 min (76 to 96 %); the policy's own figure is 93 %",
     );
   });
 

@@ -138,7 +138,7 @@ describe('the page with enough records', () => {
   it('says prior, data and estimate, and what plans would say', () => {
     expect(section).toMatchObject({
       ...{ title: 'Keeping still: outpatients who were not asked', records: 40, censored: 32 },
-      says: 'Of 40 outpatients who were not asked, 80 % kept still for 25 min (64 to 89 %), the prior says 93 %.',
+      says: "Of 40 outpatients who were not asked, 80 % kept still for 25 min (64 to 89 %); the policy's own figure is 93 %.",
     });
     expect(section?.standing).toContain('once somebody signs');
     expect(section?.effects).toHaveLength(3);

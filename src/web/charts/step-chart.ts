@@ -26,7 +26,7 @@ export interface StepChart extends PictureWords {
   };
 }
 
-const size = { width: 460, height: 300, left: 52, right: 14, bottom: 40, top: 62 };
+const size = { width: 460, height: 300, left: 64, right: 14, bottom: 40, top: 62 };
 const smoothPieces = 80;
 
 /** A step curve, a smooth one in dashes and a bar of limits, in the page's own ink. */

@@ -105,7 +105,7 @@ function patientOf(prior: SpanPrior, statedS: number, policy: SitePolicy): Toler
     : { ...unasked, [kind]: { kind: 'stated', seconds: statedS } };
 }
 
-/** The longest piece of each exam; of those the shortest, the one in the middle and the longest. */
+/** The longest piece of each exam's full-quality sequences; of those the shortest, the one in the middle and the longest. */
 function piecesFor(
   prior: SpanPrior,
   holdSpanS: number,
@@ -119,7 +119,7 @@ function piecesFor(
     const scanner = scanners.find((s) => s.coils.includes(exam.coil));
     if (scanner === undefined) return [];
     const pieces = exam.views
-      .flatMap((view) => view.candidates)
+      .map((view) => view.reference)
       .flatMap((id): Piece[] => {
         const sequence = sequenceAt(library, id, scanner.fieldT);
         if (sequence === undefined) return [];

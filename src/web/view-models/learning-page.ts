@@ -1,10 +1,15 @@
 import type { Scanner } from '../../day/index.js';
 import type { LearningEntry, SiteLibrary, SitePolicy } from '../../exams/index.js';
 import {
+  chanceAtWords,
+  driftWords,
   entrySwitchedOn,
+  estimateTitle,
   learn,
+  placeWords,
   share,
   spanWords,
+  standingWords,
   switchedOn,
   type AchievedRecord,
   type LearnedSpan,
@@ -13,7 +18,6 @@ import {
 import { learningChart } from './learning-chart.js';
 import { learningEffects, type Effect } from './learning-effects.js';
 import { entryYaml } from './learning-entry.js';
-import { driftWords, estimateTitle, placeWords, standingWords } from './learning-words.js';
 
 export interface LearningInput {
   readonly records: readonly AchievedRecord[];
@@ -81,12 +85,12 @@ function spanSection(span: LearnedSpan, tried: LearnedSpan, input: LearningInput
     says: sentence(span.says),
     records: span.records,
     censored: span.censored,
-    prior: `${share(prior.curve(prior.at))} at ${placeWords(span, prior.at)}`,
+    prior: chanceAtWords(span, prior.curve(prior.at), prior.at),
     source: `${prior.basis}: ${prior.source}`,
     estimate:
       span.reading === undefined
         ? 'none yet'
-        : `${share(span.reading.chance)} at ${placeWords(span, span.reading.at)} (${share(span.reading.low)} to ${share(span.reading.high)})`,
+        : `${chanceAtWords(span, span.reading.chance, span.reading.at)} (${share(span.reading.low)} to ${share(span.reading.high)})`,
     standing: standingWords(span),
     drift: driftWords(span),
     chart: span.reading === undefined ? '' : learningChart(span, title),

@@ -1,11 +1,7 @@
-import type {
-  LearnedSpan,
-  LearnedState,
-  LearnedTime,
-  SpanEstimate,
-  SpanKind,
-} from '../../tolerance/index.js';
-import { share, spanWords } from '../../tolerance/index.js';
+import type { SpanKind } from './groups.js';
+import type { LearnedTime } from './learned-times.js';
+import { share, spanWords } from './learned-words.js';
+import type { LearnedSpan, LearnedState, SpanEstimate } from './learning.js';
 
 export const kindWords: Readonly<Record<SpanKind, string>> = {
   still: 'Keeping still',
@@ -21,7 +17,13 @@ export function estimateTitle({ prior }: SpanEstimate): string {
 
 /** A place on the curve in words: a time, or a share of what was said. */
 export const placeWords = ({ prior }: SpanEstimate, at: number): string =>
-  prior.saidBy === undefined ? spanWords(at) : `${share(at)} of what was said`;
+  prior.saidBy === undefined
+    ? spanWords(at)
+    : `${at >= 1 ? 'the whole' : share(at)} of what was said`;
+
+/** A chance at a place of the curve. */
+export const chanceAtWords = (one: SpanEstimate, chance: number, at: number): string =>
+  `${share(chance)} ${one.prior.saidBy === undefined ? 'at' : 'reach'} ${placeWords(one, at)}`;
 
 /** Whether plans go by the records now, and why or why not. */
 export function standingWords(one: LearnedSpan | LearnedTime): string {
@@ -52,7 +54,7 @@ function stateWords(one: LearnedSpan | LearnedTime, state: LearnedState): string
       if (!('prior' in one) || !('curve' in one)) return '';
       return state.reaches <= 0
         ? 'Nobody was followed far enough to read the curve.'
-        : `Not followed far enough to change a plan: too few were still followed at ${placeWords(one, one.prior.at)}, where the policy gives its figure; the curve can be read up to ${placeWords(one, state.reaches)}.`;
+        : `Not followed far enough to change a plan: too few were still followed as far as ${placeWords(one, one.prior.at)}, where the policy gives its figure; the curve can be read up to ${placeWords(one, state.reaches)}.`;
     case 'not to be replaced':
       return `Shown only: ${state.why}.`;
   }
