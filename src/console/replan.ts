@@ -40,7 +40,7 @@ export interface Replan {
   readonly reachable: readonly SaidGrade[];
   readonly next: readonly NextStep[];
   readonly whyNext: string;
-  /** One sentence a question: what is lost if the exam stops now. */
+  /** What is lost if the exam stops now, one sentence for all questions of the same fate. */
   readonly lostIfStopped: readonly string[];
   /** What putting a view first costs, where one was asked for. */
   readonly costOfFirst?: readonly string[];
@@ -67,11 +67,6 @@ export function replan(console: ConsoleExam, state: ConsoleState, slotS: number)
   const steps = state.ended ? [] : orderOf(remaining, state, choice);
   const reachable = choice.ranks.map((rank, n) => Math.max(rank, answered[n] ?? 0) as GradeRank);
   const say = (ranks: readonly GradeRank[]) => ranks.map((rank, n) => said(console, n, rank));
-  const lost = reachable.flatMap((rank, n) =>
-    rank > (answered[n] ?? 0)
-      ? [lossOf(said(console, n, answered[n] ?? 0), said(console, n, rank))]
-      : [],
-  );
   const costOfFirst = costs(console, state, free, choice);
   const final = say(state.ended ? answered : reachable);
   return {
@@ -79,7 +74,7 @@ export function replan(console: ConsoleExam, state: ConsoleState, slotS: number)
     reachable: final,
     next: steps.map(nextStep),
     whyNext: whyNext(console, steps),
-    lostIfStopped: lost,
+    lostIfStopped: lostWords(say(answered), final),
     ...(costOfFirst === undefined ? {} : { costOfFirst }),
     chanceToFinish: choice.chance,
     nextPatientWaitsS: Math.max(0, Math.round(state.nowS + meanS(choice.tableTime) - slotS)),
@@ -166,8 +161,17 @@ function said(console: ConsoleExam, index: number, rank: GradeRank): SaidGrade {
   };
 }
 
-const lossOf = (now: SaidGrade, then: SaidGrade) =>
-  `${now.name} stays ${now.words}; going on could make it ${then.words}.`;
+/** What stopping now would lose, questions of the same fate together. */
+function lostWords(answered: readonly SaidGrade[], reachable: readonly SaidGrade[]) {
+  const names = new Map<string, string[]>();
+  answered.forEach((now, n) => {
+    const then = reachable[n];
+    if (then === undefined || then.grade === now.grade) return;
+    const fate = `now ${now.words}; going on could make it ${then.words}`;
+    names.set(fate, [...(names.get(fate) ?? []), now.name]);
+  });
+  return [...names].map(([fate, questions]) => `${questions.join(', ')}: ${fate}.`);
+}
 
 function whyNext(console: ConsoleExam, steps: readonly OrderedStep[]): string {
   const first = steps.find((s) => s.candidate !== undefined)?.candidate;

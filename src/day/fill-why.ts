@@ -7,6 +7,7 @@ import {
   type WaitingRequest,
 } from './fill-problem.js';
 import type { Offer } from './offers.js';
+import { scannerName } from './mend-words.js';
 import type { Booking } from './scanners.js';
 
 type Placed = Booking & { readonly offer: Offer };
@@ -25,8 +26,8 @@ export interface NotPlaced {
   readonly ways: readonly WayIn[];
 }
 
-const at = (b: Pick<Booking, 'scannerId' | 'date' | 'startMin'>) =>
-  `${b.scannerId}, ${b.date} ${clock(b.startMin)}`;
+const at = (problem: FillProblem, b: Pick<Booking, 'scannerId' | 'date' | 'startMin'>) =>
+  `${scannerName(b.scannerId, problem.department)}, ${b.date} ${clock(b.startMin)}`;
 
 /** Never rounded up to certainty. */
 const chanceWords = (p: number) => (p > 0.995 ? '>99 %' : `${Math.round(100 * p)} %`);
@@ -50,7 +51,7 @@ export function whyHere(
   why.push(
     more === undefined
       ? 'No other scanner or longer slot answers more diagnostically.'
-      : `${more.scannerId} in ${more.offer.slotMin} min would answer more (weight ${more.offer.diagnostic} instead of ${own.offer.diagnostic} diagnostic); that time went to answers that count more in all, or the search found no room.`,
+      : `${scannerName(more.scannerId, problem.department)} in ${more.offer.slotMin} min would answer more (weight ${more.offer.diagnostic} instead of ${own.offer.diagnostic} diagnostic); that time went to answers that count more in all, or the search found no room.`,
   );
   if (request.dueDate !== undefined)
     why.push(
@@ -74,7 +75,7 @@ export function whyHere(
     (earlier.date < own.date || (earlier.date === own.date && earlier.startMin < own.startMin));
   why.push(
     sooner
-      ? `Sooner is free (${at(earlier)}); this place has less risk of overrun or fewer coil changes.`
+      ? `Sooner is free (${at(problem, earlier)}); this place has less risk of overrun or fewer coil changes.`
       : 'No sooner place with these answers is free beside the others.',
   );
   const before = [...problem.taken, ...placed]
@@ -129,7 +130,7 @@ export function whyWaiting(
         : '';
     ways.push({
       kind: 'other time',
-      sentence: `If the visit can be on ${at(otherTime)}${late}: ${otherTime.slotMin} min are free there: ${offer?.words ?? ''}.`,
+      sentence: `If the visit can be on ${at(problem, otherTime)}${late}: ${otherTime.slotMin} min are free there: ${offer?.words ?? ''}.`,
     });
   }
   ways.push({
@@ -200,7 +201,7 @@ function roomMade(
           if (worth < (instead?.worth ?? Infinity) && priorityWorth[theirs.priority] <= ownWorth)
             instead = {
               worth,
-              sentence: `Instead of ${other.requestId} (${theirs.priority}) on ${at(other)}, who would wait: ${offer.slotMin} min there: ${offer.words}.`,
+              sentence: `Instead of ${other.requestId} (${theirs.priority}) on ${at(problem, other)}, who would wait: ${offer.slotMin} min there: ${offer.words}.`,
             };
         }
         for (const less of theirs.offers.get(scanner.id) ?? []) {
@@ -212,7 +213,7 @@ function roomMade(
           if (loss < (shorter?.loss ?? Infinity))
             shorter = {
               loss,
-              sentence: `${other.requestId} (${at(other)}) in ${less.slotMin} instead of ${other.slotMin} min, who would get: ${less.words}; then this one gets ${offer.slotMin} min: ${offer.words}.`,
+              sentence: `${other.requestId} (${at(problem, other)}) in ${less.slotMin} instead of ${other.slotMin} min, who would get: ${less.words}; then this one gets ${offer.slotMin} min: ${offer.words}.`,
             };
         }
       }

@@ -1,10 +1,4 @@
-import {
-  foldEvents,
-  replan,
-  type ConsoleEvent,
-  type ConsoleExam,
-  type Replan,
-} from '../../console/index.js';
+import { foldEvents, replan, type ConsoleEvent, type ConsoleExam } from '../../console/index.js';
 import { chanceWords } from './day-board.js';
 
 /** Where an exam at the scanner stands, in words. */
@@ -50,22 +44,10 @@ export function consolePage(
     needsContrast:
       exam.exam.views.some((v) => v.contrast === 'after') && exam.request.contrast === 'approved',
     waits: planned.nextPatientWaitsS < 30 ? '' : `${Math.ceil(planned.nextPatientWaitsS / 60)} min`,
-    lost: lostWords(planned),
+    lost: planned.lostIfStopped,
     still: spanWords(state.tolerance.still),
     hold: spanWords(state.tolerance.hold),
   };
-}
-
-/** What stopping now would lose, questions of the same fate together. */
-function lostWords(planned: Replan): readonly string[] {
-  const groups = new Map<string, string[]>();
-  planned.answered.forEach((now, n) => {
-    const then = planned.reachable[n];
-    if (then === undefined || then.grade === now.grade) return;
-    const fate = `now ${now.words}; going on could make it ${then.words}`;
-    groups.set(fate, [...(groups.get(fate) ?? []), now.name]);
-  });
-  return [...groups].map(([fate, names]) => `${names.join(', ')}: ${fate}.`);
 }
 
 function tapWords(event: ConsoleEvent, nameOf: (id: string) => string): string {

@@ -65,15 +65,22 @@ export function searchView({ at, share, offered, reached, bound }: FillSearch): 
       heading: 'Working out how much any filling could reach',
       words: 'Without that, nobody could say whether a proposal is good.',
     };
+  const rest =
+    reached.diagnostic >= bound.diagnostic
+      ? ' What is left of the search is for fewer overruns, fewer coil changes and earlier visits.'
+      : '';
   return {
     percent,
     heading: 'Searching',
-    words: answersWords(reached.diagnostic, bound.diagnostic),
+    words: answersWords(reached.diagnostic, bound.diagnostic) + rest,
   };
 }
 
 /** What is said above a proposal whose search did not run to its end. */
-export const endedWords = ({ state }: FillSearch): string | undefined =>
-  state === 'stopped'
-    ? 'The search was stopped early: this is the best it had found. A longer search may find more.'
-    : undefined;
+export function endedWords({ state, proposal }: FillSearch): string | undefined {
+  if (state !== 'stopped' || proposal === undefined) return undefined;
+  const all = proposal.objective.diagnostic >= proposal.bound.diagnostic;
+  return `The search was stopped early: this is the best it had found. ${
+    all ? 'Longer, it could at most find earlier or calmer places.' : 'Longer, it may find more.'
+  }`;
+}
