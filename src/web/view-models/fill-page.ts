@@ -3,7 +3,7 @@ import type { FillSearch } from '../fill-searches.js';
 
 /** How long a search may take, in words a scheduler has a use for. */
 export const searchLengths = [
-  { seconds: 3, words: 'a quick look, about 3 seconds' },
+  { seconds: 3, words: 'short, about 3 seconds' },
   { seconds: 10, words: 'a careful search, about 10 seconds' },
   { seconds: 30, words: 'a long search for a crowded week, about half a minute' },
 ] as const;
