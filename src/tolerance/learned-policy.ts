@@ -77,7 +77,7 @@ export function entrySwitchedOn(
   entry?: LearningEntry,
 ): SitePolicy {
   if (state.kind !== 'ready' || achieved === undefined) return policy;
-  const source = `this site's own records: ${records} exams to ${to ?? ''}${signature(entry)}; the prior was a mean of ${spanWords(prior?.meanS ?? 0)} (${prior?.source ?? ''})`;
+  const source = `this site's own records: ${records} exams to ${to ?? ''}${signature(entry)}; before, the policy's figure was a mean of ${spanWords(prior?.meanS ?? 0)} (${prior?.source ?? ''})`;
   const value = { meanS: Math.round(achieved.meanS), cv: Number(achieved.cv.toFixed(3)) };
   return {
     ...policy,
@@ -90,7 +90,7 @@ function ownRecords(
   entry: LearningEntry | undefined,
 ): string {
   const before = `${share(reading?.priorChance ?? 0)}${prior.saidBy === undefined ? ` at ${spanWords(reading?.at ?? 0)}` : ''}`;
-  return `this site's own records: ${records} exams, ${censored} of them ended first, to ${to ?? ''}${signature(entry)}; the prior was ${before} (${prior.source})`;
+  return `this site's own records: ${records} exams, ${censored} of them ended first, to ${to ?? ''}${signature(entry)}; before, the policy's figure was ${before} (${prior.source})`;
 }
 
 const signature = (entry: LearningEntry | undefined) =>

@@ -8,7 +8,8 @@ import type { DatabaseKind } from '../database.js';
 export function achievedTables(kind: DatabaseKind): readonly string[] {
   const whole = kind === 'sqlite' ? 'integer' : 'bigint';
   const seconds = kind === 'sqlite' ? 'real' : 'double precision';
-  const strict = kind === 'sqlite' ? 'strict' : '';
+  // Without a row number no order of adding is kept that would put an exam beside its rows.
+  const strict = kind === 'sqlite' ? 'strict, without rowid' : '';
   return [
     `create table counted_exam (
       booking_id text not null primary key references booking (id)

@@ -35,6 +35,11 @@ export function policyPage({ policy, exams }: SiteLibrary) {
         source: `${entry.basis}: ${entry.source}`,
       };
     }),
+    learning: policy.learning.entries.map((entry) => ({
+      what: `${entry.kind}: ${entry.group}`,
+      because: entry.because,
+      signed: `${entry.signedBy}, ${entry.signedOn}`,
+    })),
     sections: policySections.map(({ key, name }) => ({
       id: `policy-${key}`,
       name,
