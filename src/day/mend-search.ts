@@ -48,7 +48,7 @@ interface Pending {
 
 /**
  * Least disturbing places for those who lost theirs: first fewest people without a place, then fewest moved, then least
- * shift. Iterative deepening (Korf 1985) over both counts, with branch and bound on the shift; a level that the node budget
+ * shift, a minute of somebody urgent counting more. Iterative deepening (Korf 1985) over both counts, with branch and bound on the shift; a level that the node budget
  * cuts short takes the proof with it, not the answer.
  */
 export function rearrange(
@@ -105,11 +105,12 @@ export function rearrange(
         return;
       }
       const rest = pending.slice(1);
-      const { team } = movers[next.mover]!.request;
+      const { team, priority } = movers[next.mover]!.request;
+      const weight = priorityWorth[priority];
       settled.add(next.mover);
       const choices: { place: Place; met: readonly number[] }[] = [];
       for (const place of placesOf(next.mover)) {
-        if (cost + place.shiftMin >= bestCost) break;
+        if (cost + weight * place.shiftMin >= bestCost) break;
         const met = grid.inTheWay(place.to, team, canPush);
         if (met === undefined || met.some((m) => settled.has(m))) continue;
         choices.push({ place, met });
@@ -123,7 +124,7 @@ export function rearrange(
           [...rest, ...met.map((mover) => ({ mover, pushedBy: next.mover }))],
           canDrop,
           canPush - met.length,
-          cost + place.shiftMin,
+          cost + weight * place.shiftMin,
         );
         replaced.pop();
         grid.mark(place.to, team, -1);
