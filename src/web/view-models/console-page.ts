@@ -45,8 +45,7 @@ export function consolePage(
       exam.exam.views.some((v) => v.contrast === 'after') && exam.request.contrast === 'approved',
     waits: planned.nextPatientWaitsS < 30 ? '' : `${Math.ceil(planned.nextPatientWaitsS / 60)} min`,
     lost: planned.lostIfStopped,
-    still: spanWords(state.tolerance.still),
-    hold: spanWords(state.tolerance.hold),
+    counted: `${spanWords('still', state.tolerance.still)}, ${spanWords('breath', state.tolerance.hold)}`,
   };
 }
 
@@ -63,8 +62,8 @@ function tapWords(event: ConsoleEvent, nameOf: (id: string) => string): string {
   }
 }
 
-const spanWords = (span: { readonly kind: string; readonly seconds?: number }) =>
-  span.kind === 'stated' ? `${Math.round(span.seconds ?? 0)} s` : 'not asked';
+const spanWords = (of: string, span: { readonly kind: string; readonly seconds?: number }) =>
+  span.kind === 'stated' ? `${of} for ${Math.round(span.seconds ?? 0)} s` : `${of}: not asked`;
 
 function minSec(seconds: number): string {
   const whole = Math.max(0, Math.round(seconds));
