@@ -103,7 +103,7 @@ function spanSection(span: LearnedSpan, tried: LearnedSpan, input: LearningInput
       ? entryYaml({
           ...{ kind: prior.kind, group: prior.group, signedOn: input.today },
           ...readAt(span),
-          because: sentence(estimate.says),
+          because: capital(estimate.says),
         })
       : '',
   };
@@ -143,9 +143,10 @@ function timeRow(time: LearnedTime, library: SiteLibrary, { written, today }: Le
         : '',
     yaml:
       state.kind === 'ready' && kind === 'entry'
-        ? entryYaml({ kind, group, signedOn: today, because: sentence(time.says) })
+        ? entryYaml({ kind, group, signedOn: today, because: capital(time.says) })
         : '',
   };
 }
 
-const sentence = (text: string) => `${text.charAt(0).toUpperCase()}${text.slice(1)}.`;
+const capital = (text: string) => `${text.charAt(0).toUpperCase()}${text.slice(1)}`;
+const sentence = (text: string) => `${capital(text)}.`;
