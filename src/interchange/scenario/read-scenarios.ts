@@ -35,18 +35,28 @@ export function readScenarios(
   usual: Scenario,
   known: { readonly examIds: readonly string[] },
 ): Result<readonly Scenario[]> {
-  const source = parseYaml(file);
+  const source = parsed(file);
   if (source.kind === 'refused') return source;
-  const parsed = scenarioFile.safeParse(source.value.value);
-  if (!parsed.success) {
+  const { value, lineOf } = source.value;
+  const read = scenarioFile.safeParse(value);
+  if (!read.success) {
     return {
       kind: 'refused',
-      problems: schemaProblems(parsed.error, source.value, source.value.value, 'scenarios'),
+      problems: schemaProblems(read.error, source.value, value, 'scenarios').map((problem) => ({
+        ...problem,
+        wayOut: 'Correct it in the file.',
+      })),
     };
   }
-  const { scenarios, ...shared } = parsed.data;
+  const { scenarios, ...shared } = read.data;
   const problems: Problem[] = [];
-  const read = scenarios.map((own): Scenario => {
+  const found = scenarios.map((own, n): Scenario => {
+    /** Where a field stands: with the scenario itself, at the top for all, or else where the scenario begins. */
+    const place = (field: string) => {
+      const at = /^hours /.test(field) ? 'scanners' : /^slot /.test(field) ? 'slots' : field;
+      const line = lineOf(at in own || !(at in shared) ? ['scenarios', n, at] : [at]);
+      return `${file.path}${line === undefined ? '' : `, line ${line}`}, scenario "${own.name}", field ${field}`;
+    };
     const { scanners: wanted, cutShortAfterMin: cut, ...rest } = { ...shared, ...own };
     const { cutShortAfterMin: usualCut, ...start } = usual;
     const limit = cut ?? usualCut;
@@ -55,19 +65,47 @@ export function readScenarios(
       ...withoutGaps(rest),
       ...(limit === undefined || limit === 'never' ? {} : { cutShortAfterMin: limit }),
       scanners:
-        wanted === undefined ? usual.scanners : found(wanted, usual.scanners, own.name, problems),
+        wanted === undefined
+          ? usual.scanners
+          : scannersOf(wanted, usual.scanners, place('scanners'), problems),
     };
-    for (const { problem } of checkScenario(scenario, known))
-      problems.push({ ...problem, thing: `${file.path}, "${scenario.name}", ${problem.thing}` });
+    if (scenarios.findIndex((s) => s.name === own.name) < n)
+      problems.push({
+        code: 'scenario-name',
+        thing: place('name'),
+        value: 'the name of an earlier one',
+        limit: 'each scenario has a name of its own',
+        wayOut: 'Give it another name.',
+      });
+    for (const { field, problem } of checkScenario(scenario, known))
+      // Scanners that were not found are told of already.
+      if (wanted === undefined || field !== 'scanners' || scenario.scanners.length > 0)
+        problems.push({ ...problem, thing: place(field) });
     return scenario;
   });
-  return problems.length > 0 ? { kind: 'refused', problems } : { kind: 'ok', value: read };
+  return problems.length > 0 ? { kind: 'refused', problems } : { kind: 'ok', value: found };
 }
 
-function found(
+/** Text that is read into endless aliases is refused like any other that is no scenario file. */
+function parsed(file: LibraryFile): ReturnType<typeof parseYaml> {
+  try {
+    return parseYaml(file);
+  } catch (error) {
+    const problem: Problem = {
+      code: 'scenario-syntax',
+      thing: file.path,
+      value: error instanceof Error ? error.message : 'unreadable',
+      limit: 'the file must be valid YAML or JSON',
+      wayOut: 'Write it without aliases; data-demo/scenarios.yaml shows how.',
+    };
+    return { kind: 'refused', problems: [problem] };
+  }
+}
+
+function scannersOf(
   wanted: z.infer<typeof scanners>,
   own: readonly Scanner[],
-  scenario: string,
+  place: string,
   problems: Problem[],
 ): readonly Scanner[] {
   return wanted.flatMap((one): readonly Scanner[] => {
@@ -76,7 +114,7 @@ function found(
     if (known !== undefined) return [known];
     problems.push({
       code: 'scenario-scanner',
-      thing: `"${scenario}", field scanners`,
+      thing: place,
       value: `"${one}"`,
       limit: `the department has: ${own.map((s) => s.id).join(', ')}`,
       wayOut: 'Name one of these, or describe the new scanner in full.',
