@@ -43,6 +43,10 @@ export const scenarioRanges: Readonly<Record<NumberField, Range>> = {
   seed: { low: 0, high: 2 ** 32 - 1, unit: 'seed', whole: true },
 };
 
+const longestTeam = 60;
+/** Stretches in which one scanner is open, or has a break. */
+const mostStretches = 12;
+
 /** Most scanner-days one run may take: some minutes on a small machine. */
 export const mostDays = 20_000;
 const mostScanners = 12;
@@ -103,6 +107,15 @@ function scannerProblems({ scanners }: Scenario): FieldProblem[] {
     const field = `hours ${id}`;
     if (hours.length === 0)
       found.push(problem(field, 'none', 'open for some time', 'Give the hours it is open.'));
+    if (Math.max(hours.length, breaks.length) > mostStretches)
+      found.push(
+        problem(
+          field,
+          `${Math.max(hours.length, breaks.length)} stretches`,
+          `at most ${mostStretches} a day`,
+          'Join some.',
+        ),
+      );
     for (const { fromMin, toMin } of [...hours, ...breaks]) {
       if (
         Number.isInteger(fromMin) &&
@@ -221,6 +234,16 @@ function shareProblems(
 
 function teamProblems({ teams }: Scenario): FieldProblem[] {
   return teams.flatMap((team) => {
+    const name = team.name.trim();
+    if (name === '' || name.length > longestTeam)
+      return [
+        problem(
+          'teams',
+          name === '' ? 'no name' : `a name of ${name.length} characters`,
+          `a name of at most ${longestTeam} characters`,
+          'Name the team in a few words.',
+        ),
+      ];
     const unknown = team.groups.filter((g) => !patientGroups.includes(g));
     if (unknown.length > 0)
       return [
@@ -231,7 +254,7 @@ function teamProblems({ teams }: Scenario): FieldProblem[] {
       : [
           problem(
             'teams',
-            `${team.name}: ${team.count}`,
+            `${name}: ${team.count}`,
             'a whole number from 1 to 20',
             'A team nobody has cannot be asked for: take it out or give it one.',
           ),

@@ -9,6 +9,15 @@ export interface Finding {
   readonly sentence: string;
 }
 
+/** What a difference rests on: the same months of both. */
+export interface FindingGround {
+  readonly before: Estimates;
+  readonly after: Estimates;
+  readonly months: number;
+  /** Working days in these months. */
+  readonly days: number;
+}
+
 /** Measures that findings speak about, most telling first. */
 const spoken: readonly Measure[] = [
   'diagnosticPerDay',
@@ -16,54 +25,67 @@ const spoken: readonly Measure[] = [
   'belowDiagnosticPerDay',
   'quickLookOnlyShare',
   'followUpsPerDay',
+  'cutShortShare',
   'overtimeMinPerDay',
   'overrunShare',
   'waitNinetiethMin',
-  'idleMinPerScannerDay',
-  'listAtEnd',
+  'emergencyWaitMedianMin',
   'sentHomePerDay',
+  'daysWaitedMedian',
+  'listAtEnd',
+  'idleMinPerScannerDay',
 ];
 
 /**
- * What a scenario changes against another in plain words, better and worse alike; what the simulated days cannot tell
- * from nothing is said to be unchanged within them.
- *
- * @param days working days both were simulated for
+ * What a scenario changes against another in plain words, better and worse alike; what the simulated days cannot tell from
+ * chance, and what is too small to print, is named together at the end.
  */
-export function findingsOf(differences: Estimates, days: number): readonly Finding[] {
-  const found = spoken.map((measure): Finding => {
-    const { better } = measureWords[measure];
-    const difference = differences[measure];
-    const verdict = verdictOf(difference, better);
-    return { measure, verdict, sentence: sentenceOf(measure, difference) };
-  });
-  const unchanged = found.filter((f) => f.verdict === 'unchanged');
-  const changed = found.filter((f) => f.verdict !== 'unchanged');
-  if (unchanged.length === 0) return changed;
-  const names = unchanged.map((f) => lowered(measureWords[f.measure].name)).join('; ');
-  return [
-    ...changed,
-    {
-      measure: unchanged[0]!.measure,
-      verdict: 'unchanged',
-      sentence: `Unchanged within what ${days} days can tell: ${names}.`,
-    },
-  ];
+export function findingsOf(differences: Estimates, ground: FindingGround): readonly Finding[] {
+  const [first] = spoken;
+  if (ground.months < 2)
+    return [
+      {
+        ...{ measure: first!, verdict: 'unchanged' },
+        sentence: 'One month alone cannot tell a change from chance: simulate two or more.',
+      },
+    ];
+  const found = spoken.map((measure) => ({ measure, verdict: verdictOf(measure, differences) }));
+  const told = found
+    .filter((f) => f.verdict !== 'unchanged')
+    .map((f): Finding => ({ ...f, sentence: sentenceOf(f.measure, differences, ground) }));
+  const rest = found.filter((f) => f.verdict === 'unchanged');
+  if (rest.length === 0) return told;
+  const names = rest.map((f) => lowered(measureWords[f.measure].name)).join('; ');
+  const sentence = `No difference, or none beyond chance, in ${ground.days} simulated days: ${names}.`;
+  return [...told, { measure: rest[0]!.measure, verdict: 'unchanged', sentence }];
 }
 
-function verdictOf({ low, high, mean }: Estimate, better: string): Finding['verdict'] {
+function verdictOf(measure: Measure, differences: Estimates): Finding['verdict'] {
+  const { low, high, mean } = differences[measure];
+  const { better } = measureWords[measure];
   if (low <= 0 && high >= 0) return 'unchanged';
+  if (Number(measureFigure(measure, mean)) === 0) return 'unchanged';
   if (better === 'neither') return 'changed';
   return mean > 0 === (better === 'more') ? 'better' : 'worse';
 }
 
-function sentenceOf(measure: Measure, { mean, low, high }: Estimate): string {
-  const { change } = measureWords[measure];
+function sentenceOf(
+  measure: Measure,
+  differences: Estimates,
+  { before, after }: FindingGround,
+): string {
+  const [more, fewer] = measureWords[measure].change;
+  const { mean } = differences[measure];
+  const words = (mean > 0 ? more : fewer).replace('{}', sizeOf(measure, differences[measure]));
+  const [now, then] = [after, before].map((e) => measureFigure(measure, e[measure].mean));
+  return `${words}: ${now} instead of ${then}.`;
+}
+
+/** The change without its sign, with its limits behind it. */
+function sizeOf(measure: Measure, { mean, low, high }: Estimate): string {
   const size = (value: number) => measureFigure(measure, Math.abs(value));
   const [near, far] = mean > 0 ? [low, high] : [high, low];
-
-  const words = `${change[0]} ${size(mean)} ${mean > 0 ? 'more' : 'fewer'} ${change[1]}`;
-  return `${words.charAt(0).toUpperCase()}${words.slice(1)} (${size(near)} to ${size(far)}).`;
+  return `${size(mean)} (${size(near)} to ${size(far)})`;
 }
 
 const lowered = (text: string) => text.charAt(0).toLowerCase() + text.slice(1);

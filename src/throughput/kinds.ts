@@ -1,5 +1,6 @@
 import type { ExamRequest } from '../planning/index.js';
 import type { PatientGroup } from './scenario.js';
+import { standIns, type CountedKind } from './stand-ins.js';
 
 /** A kind of request: an exam with what one sort of patient can bear, and how often it comes. */
 export interface RequestKind {
@@ -31,6 +32,18 @@ export interface MixWanted {
   readonly groupShares?: Readonly<Partial<Record<PatientGroup, number>>>;
 }
 
+/** Kinds that were planned, of those on record; fewer where some stand for all, or where a share of 0 is wanted. */
+export interface KindsUsed {
+  readonly planned: number;
+  readonly onRecord: number;
+}
+
+/** Most kinds planned for; with more, some stand for all. */
+export const mostKinds = 300;
+
+/** From this age on patients of the same class and conditions plan alike: site policies end childhood before. */
+const grownYears = 21;
+
 /**
  * The kinds of request a department sees: its own requests on record, each as often as it stands there, weighed so that
  * exams and groups come in the wanted shares (iterative proportional fitting, Deming and Stephan 1940). What never stood
@@ -40,15 +53,7 @@ export function kindsOf(
   requests: readonly ExamRequest[],
   wanted: MixWanted = {},
 ): readonly RequestKind[] {
-  const counted = new Map<string, { request: ExamRequest; group: PatientGroup; weight: number }>();
-  for (const request of requests) {
-    const { id, dueDate, canCome, note, slotS, ...matters } = request;
-    const key = JSON.stringify(matters);
-    const known = counted.get(key);
-    if (known === undefined) counted.set(key, { request, group: groupOf(request), weight: 1 });
-    else known.weight += 1;
-  }
-  const all = [...counted.values()];
+  const all = standIns(countedKinds(requests), mostKinds);
   const booked = all.filter((k) => k.group !== 'emergency');
   const emergencies = all.filter((k) => k.group === 'emergency');
   rake(booked, wanted);
@@ -56,15 +61,36 @@ export function kindsOf(
   return [...booked, ...emergencies].filter((k) => k.weight > 0);
 }
 
+/** Requests that are simulated alike, counted once. */
+export function countedKinds(requests: readonly ExamRequest[]): readonly CountedKind[] {
+  const counted = new Map<string, CountedKind>();
+  for (const request of requests) {
+    const key = keyOf(request);
+    const known = counted.get(key);
+    if (known === undefined) counted.set(key, { request, group: groupOf(request), weight: 1 });
+    else known.weight += 1;
+  }
+  return [...counted.values()];
+}
+
+/** What a visit depends on: not the number, the day, the note, or who comes along. */
+function keyOf(request: ExamRequest): string {
+  const { examId, questionIds, priority, tolerance, contrast, transport } = request;
+  const { ageYears, ...bearing } = tolerance;
+  const young = ageYears !== undefined && ageYears < grownYears ? ageYears : null;
+  const urgency = priority === 'routine' || priority === 'stat' ? priority : 'urgent';
+  return JSON.stringify([
+    ...[examId, questionIds, urgency, bearing, young, contrast, transport],
+    request.b1RmsLimitMicroTesla ?? null,
+  ]);
+}
+
 const rounds = 60;
 
-function rake(
-  kinds: { request: ExamRequest; group: PatientGroup; weight: number }[],
-  { examShares, groupShares }: MixWanted,
-): void {
+function rake(kinds: CountedKind[], { examShares, groupShares }: MixWanted): void {
   const fit = (
-    share: (k: (typeof kinds)[number]) => number | undefined,
-    label: (k: (typeof kinds)[number]) => string,
+    share: (k: CountedKind) => number | undefined,
+    label: (k: CountedKind) => string,
   ) => {
     const sums = new Map<string, number>();
     for (const k of kinds) sums.set(label(k), (sums.get(label(k)) ?? 0) + k.weight);

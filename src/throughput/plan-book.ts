@@ -44,7 +44,7 @@ export class PlanBook {
       found = slotPlans(request, scanner, quickLooks ? this.ground : this.strict, slotsMin, {
         quickLooks,
       });
-      this.plans.set(key, found);
+      keep(this.plans, key, found);
     }
     return 'cannot' in found ? undefined : found;
   }
@@ -54,7 +54,7 @@ export class PlanBook {
     let found = this.full.get(key);
     if (found === undefined) {
       found = fullProtocol(request, scanner, this.ground);
-      this.full.set(key, found);
+      keep(this.full, key, found);
     }
     return 'cannot' in found ? undefined : found;
   }
@@ -74,4 +74,13 @@ export class PlanBook {
       scanner.coils.includes(coil),
     ]);
   }
+}
+
+/** Each holds distributions of thousands of points; a server that runs for months must not gather them all. */
+const mostKept = 1500;
+
+function keep<T>(kept: Map<string, T>, key: string, plans: T): void {
+  const [oldest] = kept.size >= mostKept ? kept.keys() : [];
+  if (oldest !== undefined) kept.delete(oldest);
+  kept.set(key, plans);
 }

@@ -50,12 +50,14 @@ export function slotPlans(
     slotsMin.map((m) => m * 60),
   );
   // Neighbouring slots often run the same set: worked out once.
-  const known = new Map<string, RunPlan>();
+  const known = new Map<string, { readonly run: RunPlan; readonly choice: Choice }>();
   return choices.map((choice, n): SlotPlan => {
     const key = choice.picks.join(',');
-    const run = known.get(key) ?? runOf(ready.value, choice, ground, rules);
-    known.set(key, run);
-    return slotPlan(slotsMin[n]!, choice, run);
+    const same = known.get(key) ?? { run: runOf(ready.value, choice, ground, rules), choice };
+    known.set(key, same);
+    // The same set has the same table time: kept once, it is long.
+    const { tableTime } = same.choice;
+    return slotPlan(slotsMin[n]!, { ...choice, tableTime }, same.run);
   });
 }
 

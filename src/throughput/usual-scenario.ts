@@ -129,9 +129,13 @@ export function usualScenario(
     ]),
   );
   sources['requestsPerDay'] =
-    `this site's own records: ${booked} requests for ${days} day(s), emergencies not counted`;
+    booked > 0
+      ? `this site's own records: ${booked} requests for ${days} day(s), emergencies not counted`
+      : 'assumption: no requests on record; put in the own number';
   sources['mix'] =
-    `this site's own records: ${requests.length} requests, each as often as it stands there`;
+    requests.length > 0
+      ? `this site's own records: ${requests.length} requests, each as often as it stands there`
+      : 'no requests on record yet: take some before anything can be simulated';
   if (emergencies > 0)
     sources['emergenciesPerDay'] =
       `this site's own records: ${emergencies} emergencies for ${days} day(s)`;

@@ -1,6 +1,6 @@
 import type { Scanner } from '../day/index.js';
 import { quantileS, type ExamRequest, type PlanningGround } from '../planning/index.js';
-import { kindsOf, type RequestKind } from './kinds.js';
+import { countedKinds, kindsOf, type KindsUsed, type RequestKind } from './kinds.js';
 import type { PlanBook } from './plan-book.js';
 import type { SlotPlan } from './run-plan.js';
 import type { Scenario } from './scenario.js';
@@ -10,6 +10,8 @@ export interface WorkedOut {
   readonly department: SimDepartment;
   /** Requests on record that no scanner of the scenario can take, by exam and coil: they are left out. */
   readonly leftOut: readonly string[];
+  /** Kinds of request that were planned, and how many stand on record. */
+  readonly kinds: KindsUsed;
 }
 
 /** Works a scenario out into numbers, kind by kind; planning takes a while, so the caller may breathe between steps. */
@@ -56,7 +58,8 @@ export function* workOut(
     coilChangeMeanMin: coilChange.meanS / 60,
     coilChangeCv: coilChange.cv,
   };
-  return { department, leftOut: [...leftOut] };
+  const onRecord = countedKinds(requests).length;
+  return { department, leftOut: [...leftOut], kinds: { planned: kinds.length, onRecord } };
 
   function placeOn({ request }: RequestKind, scanner: Scanner): SimPlace | undefined {
     if (content === 'planned') {

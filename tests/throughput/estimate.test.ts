@@ -2,23 +2,21 @@ import { describe, expect, it } from 'vitest';
 import { atSeconds, lognormal, mixture } from '../../src/planning/distribution.js';
 import { randomStream } from '../../src/shared/index.js';
 import {
-  checkScenario,
   compareRuns,
   findingsOf,
-  firstScenarios,
-  kindsOf,
   meanWithLimits,
   measureFigure,
   slotAdvice,
   slotBalance,
   differencesOf,
+  estimatesOf,
+  measureWords,
   simulateMonth,
   type MonthRecord,
-  type Scenario,
 } from '../../src/throughput/index.js';
 import { exponential } from '../../src/throughput/variates.js';
 import { queued } from './queues.js';
-import { ground, requests, usual, worked } from './ground.js';
+import { usual, worked } from './ground.js';
 
 describe('limits of a mean', () => {
   it('by hand: 4, 6, 8 have mean 6 and limits 6 -+ 4.303 * 2 / sqrt(3)', () => {
@@ -83,14 +81,63 @@ describe('findings', () => {
   it('say better, worse and what the days cannot tell', () => {
     const before = [record(50, 10), record(51, 12), record(49, 11)];
     const after = [record(52, 20), record(53.1, 22.5), record(51.2, 21)];
-    const [more, worse, rest] = findingsOf(differencesOf(after, before), 60);
+    const [more, worse, rest] = findingsOf(differencesOf(after, before), {
+      ...{ before: estimatesOf(before), after: estimatesOf(after), months: 3, days: 60 },
+    });
     expect(more!.verdict).toBe('better');
     expect(more!.sentence).toMatch(
-      /^Answers 2\.1 more questions diagnostically a day \(1\.\d to 2\.\d\)\.$/,
+      /^2\.1 \(1\.\d to 2\.\d\) more questions are answered diagnostically a day: 52\.1 instead of 50\.0\.$/,
     );
     expect(worse!.verdict).toBe('worse');
-    expect(worse!.sentence).toMatch(/^Needs 10\.2 more minutes of overtime a day/);
-    expect(rest!.sentence).toMatch(/^Unchanged within what 60 days can tell: patients served/);
+    expect(worse!.sentence).toMatch(/^10\.2 \(\d+\.\d to \d+\.\d\) more minutes of overtime a day/);
+    expect(rest!.sentence).toMatch(
+      /^No difference, or none beyond chance, in 60 simulated days: patients served/,
+    );
+  });
+
+  it('fewer is said as fewer, and a shrinking wait as shrinking', () => {
+    const wait = (waitNinetiethMin: number) => ({ ...record(50, 10), waitNinetiethMin });
+    const [before, after] = [
+      [wait(12), wait(13)],
+      [wait(6), wait(7.01)],
+    ];
+    const run = { daysAMonth: 20, leftOut: [] };
+    const { scenarios } = compareRuns([
+      { ...run, name: 'A', months: before },
+      { ...run, name: 'B', months: after },
+    ]);
+    expect(scenarios[1]!.findings[0]).toMatchObject({
+      verdict: 'better',
+      sentence:
+        'The wait that nine of ten patients stay within shrinks by 6.0 (5.9 to 6.1) min: 6.5 instead of 12.5.',
+    });
+  });
+
+  it('one month alone decides nothing, and a run without a month finds nothing', () => {
+    const run = { name: 'A', months: [record(50, 10)], daysAMonth: 20, leftOut: [] };
+    const [, one] = compareRuns([run, { ...run, months: [record(60, 10)] }]).scenarios;
+    expect(one!.findings.map((f) => f.sentence)).toEqual([
+      'One month alone cannot tell a change from chance: simulate two or more.',
+    ]);
+    const [, none] = compareRuns([run, { ...run, months: [] }], true).scenarios;
+    expect(none!.findings).toEqual([]);
+  });
+
+  it('a difference too small to print is none', () => {
+    const home = (sentHomePerDay: number) => ({ ...record(50, 10), sentHomePerDay });
+    const run = { daysAMonth: 20, leftOut: [] };
+    const [, other] = compareRuns([
+      { ...run, name: 'A', months: [home(0), home(0)] },
+      { ...run, name: 'B', months: [home(0.004), home(0.00401)] },
+    ]).scenarios;
+    expect(other!.findings).toHaveLength(1);
+    expect(other!.findings[0]!.sentence).toContain('sent home');
+  });
+
+  it('every sentence about quick looks says that they are not diagnostic', () => {
+    for (const { name, means, change } of Object.values(measureWords))
+      for (const words of [name, means, ...change])
+        if (/quick look|screening/i.test(words)) expect(words).toMatch(/not\W+diagnostic/i);
   });
 
   it('a scenario against its own copy changes nothing', () => {
@@ -149,77 +196,5 @@ describe('slot advice', () => {
     // T6: 90 % of a lognormal of variation 0.29 lies below 1.382 times its mean.
     const wide = slotAdvice(lognormal(1800, 0.29), { chance: 0.9, lateCost: 1, idleCost: 1 });
     expect(wide.forChanceMin).toBe(5 * Math.ceil((30 * 1.382) / 5));
-  });
-});
-
-describe('the mix of requests', () => {
-  it('comes in the wanted shares, by exam and by group at once', () => {
-    const kinds = kindsOf(requests, {
-      examShares: { knee: 0.5, 'brain-general': 0.3, liver: 0.2 },
-      groupShares: { settled: 0.6, restless: 0.4 },
-    });
-    const booked = kinds.filter((k) => k.group !== 'emergency');
-    const sum = (of: (k: (typeof booked)[number]) => boolean) =>
-      booked.filter(of).reduce((a, k) => a + k.weight, 0);
-    expect(sum((k) => k.request.examId === 'knee')).toBeCloseTo(0.5, 3);
-    expect(sum((k) => k.request.examId === 'liver')).toBeCloseTo(0.2, 3);
-    expect(sum((k) => k.group === 'restless')).toBeCloseTo(0.4, 3);
-    expect(sum(() => true)).toBeCloseTo(1, 9);
-  });
-
-  it('is that of the records when nothing is wanted', () => {
-    const kinds = kindsOf([...requests, ...requests]);
-    expect(kinds.length).toBeLessThanOrEqual(requests.length);
-    const knees = requests.filter((r) => r.examId === 'knee').length;
-    const booked = requests.filter(
-      (r) => r.tolerance.patientClass !== 'emergency' && r.priority !== 'stat',
-    );
-    const share = kinds
-      .filter((k) => k.request.examId === 'knee')
-      .reduce((a, k) => a + k.weight, 0);
-    expect(share).toBeCloseTo(knees / booked.length, 9);
-  });
-});
-
-describe('a bad scenario gets a word at its field', () => {
-  const examIds = [...ground.library.exams.keys()];
-  const fields = (change: Partial<Scenario>) =>
-    checkScenario({ ...usual, ...change }, { examIds }).map((p) => p.field);
-
-  it('none of the shipped ones has any', () => {
-    for (const scenario of firstScenarios(usual))
-      expect(checkScenario(scenario, { examIds })).toEqual([]);
-  });
-
-  it.each<[string, Partial<Scenario>, string]>([
-    ['no scanner', { scanners: [] }, 'scanners'],
-    [
-      '30-hour days',
-      { scanners: [{ ...usual.scanners[0]!, hours: [{ fromMin: 0, toMin: 30 * 60 }] }] },
-      'hours mr1',
-    ],
-    ['the same scanner twice', { scanners: [usual.scanners[0]!, usual.scanners[0]!] }, 'scanners'],
-    ['negative rates', { requestsPerDay: -3 }, 'requestsPerDay'],
-    ['no number at all', { emergenciesPerDay: Number.NaN }, 'emergenciesPerDay'],
-    ['shares above one', { lateShare: 11 }, 'lateShare'],
-    ['a million days', { months: 500, daysAMonth: 60 }, 'months'],
-    ['a million months', { months: 1_000_000 }, 'months'],
-    ['half a scanner team', { teams: [{ name: 'play', count: 0.5, groups: ['child'] }] }, 'teams'],
-    ['slots of seven minutes', { slots: { kind: 'fixed', minutes: 7 } }, 'slots'],
-    ['slots of two hours', { slots: { kind: 'tolerance', mostMin: 120 } }, 'slots'],
-    ['an exam nobody knows', { examShares: { elbow: 1 } }, 'examShares'],
-    ['shares that are all 0', { groupShares: { settled: 0 } }, 'groupShares'],
-    ['no name', { name: ' ' }, 'name'],
-  ])('%s', (_, change, field) => {
-    expect(fields(change)).toEqual([field]);
-  });
-
-  it('says value, limit and way out', () => {
-    const [first] = checkScenario({ ...usual, requestsPerDay: -3 }, { examIds });
-    expect(first!.problem).toMatchObject({
-      value: '-3',
-      limit: expect.stringContaining('from 0 to 500'),
-    });
-    expect(first!.problem.wayOut).not.toBe('');
   });
 });

@@ -130,7 +130,9 @@ describe('the month over HTTP', () => {
     await until(run, (p) => p.state === 'done');
     const html = await page(run);
     expect(html).toContain('against Fixed 30 minutes, full protocol');
-    expect(html).toMatch(/Answers \d+\.\d more questions diagnostically a day \(/);
+    expect(html).toMatch(
+      /\d+\.\d \(\d+\.\d to \d+\.\d\) more questions are answered diagnostically a day: \d/,
+    );
     expect(html.match(/<svg/g)!.length).toBeGreaterThanOrEqual(6);
     const csv = await page(`${run}/table.csv`);
     expect(csv.split('\r\n')).toHaveLength(1 + 2 * 18);

@@ -2,16 +2,17 @@ import { availableParallelism } from 'node:os';
 import { join } from 'node:path';
 import { InvalidArgumentError, type Command } from 'commander';
 import { readScenarios } from '../../interchange/index.js';
+import { sayProblem } from '../../shared/index.js';
 import {
   checkScenario,
   firstScenarios,
   usualScenario,
   type Scenario,
 } from '../../throughput/index.js';
+import { runScenarios } from '../../throughput/pool/run-scenarios.js';
 import { demoFolder, readText } from '../files.js';
 import { openDepartment, openRequests } from '../ground.js';
 import { openPlanningGround } from '../own-records.js';
-import { runScenarios } from '../month-run.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
 import { monthCsv } from '../text/month-csv.js';
 import { monthText } from '../text/month-text.js';
@@ -87,7 +88,9 @@ async function month(file: string | undefined, flags: MonthFlags): Promise<numbe
   }));
   const wrong = scenarios.flatMap((s) => checkScenario(s, { examIds }).map((p) => p.problem));
   if (wrong.length > 0) {
-    printProblems(wrong);
+    // A number given for all is wrong in all alike: told once.
+    const once = new Map(wrong.map((problem) => [sayProblem(problem), problem]));
+    printProblems([...once.values()]);
     return exitCodes.usage;
   }
   const stop = new AbortController();

@@ -4,7 +4,6 @@ const measures = Object.keys(measureWords) as Measure[];
 
 /** One row a scenario and measure: spreadsheets read it. */
 export function monthCsv({ scenarios, days }: Comparison): string {
-  const quoted = (text: string) => `"${text.replaceAll('"', '""')}"`;
   const rows = scenarios.flatMap(({ name, estimates, differences }) =>
     measures.map((measure) => {
       const { name: what, unit } = measureWords[measure];
@@ -12,7 +11,7 @@ export function monthCsv({ scenarios, days }: Comparison): string {
         e === undefined
           ? ['', '', '']
           : [e.mean, e.low, e.high].map((v) =>
-              Number.isFinite(v) ? String(v * measureWords[measure].times) : '',
+              Number.isFinite(v) ? plain(v * measureWords[measure].times) : '',
             ),
       );
       return [quoted(name), quoted(what), quoted(unit), days, ...figures].join(',');
@@ -22,3 +21,10 @@ export function monthCsv({ scenarios, days }: Comparison): string {
     'scenario,measure,unit,days,mean,low_95,high_95,difference_from_first,difference_low_95,difference_high_95';
   return [header, ...rows].join('\r\n');
 }
+
+/** Without the last digits that binary arithmetic makes up. */
+const plain = (value: number) => String(Number(value.toPrecision(10)));
+
+/** A cell of words; one that a spreadsheet would take for a formula gets an apostrophe before it. */
+const quoted = (text: string) =>
+  `"${(/^[=+\-@\t\r]/.test(text) ? `'${text}` : text).replaceAll('"', '""')}"`;

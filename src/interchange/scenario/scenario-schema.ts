@@ -15,7 +15,7 @@ const slotRule = z.discriminatedUnion('kind', [
 ]);
 
 const team = z.strictObject({
-  name: z.string().min(1).max(60),
+  name: z.string(),
   count: z.number(),
   groups: z.array(z.enum(patientGroups)),
 });
@@ -60,8 +60,8 @@ export const storedScenario = z.strictObject({
   ...scenarioFields,
   scanners: z.array(
     z.strictObject({
-      id: z.string().min(1).max(40),
-      name: z.string().min(1).max(80),
+      id: z.string().min(1),
+      name: z.string().min(1),
       fieldT: z.union([z.literal(1.5), z.literal(3)]),
       boreCm: z.number(),
       coils: z.array(z.string()),

@@ -1,6 +1,12 @@
 import { Worker } from 'node:worker_threads';
+import type { SiteLibrary } from '../../exams/index.js';
 import type { MonthRecord } from '../month-record.js';
 import type { SimDepartment } from '../sim-department.js';
+
+/** What a thread of this folder is started for. */
+export type Role =
+  | { readonly role: 'months'; readonly departments: readonly SimDepartment[] }
+  | { readonly role: 'desk'; readonly library: SiteLibrary };
 
 export interface MonthTask {
   readonly scenario: number;
@@ -49,7 +55,7 @@ export async function simulateMonths(
   let next = 0;
   const workers = Array.from(
     { length: Math.max(1, Math.min(threads, tasks.length)) },
-    () => new Worker(workerFile, { workerData: departments }),
+    () => new Worker(workerFile, { workerData: { role: 'months', departments } satisfies Role }),
   );
   try {
     await Promise.all(

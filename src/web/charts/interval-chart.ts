@@ -20,6 +20,8 @@ const width = 460;
 const rowHeight = 40;
 const left = 10;
 const right = 66;
+/** Longest name that has room above its line; the whole of it stands in the description. */
+const longestName = 62;
 
 /** Values with their limits, one line each, on a common scale from 0: a dot for the value, a bar for the limits. */
 export function intervalChart(chart: IntervalChart): string {
@@ -35,7 +37,7 @@ export function intervalChart(chart: IntervalChart): string {
     const [low, high] = [row.low, row.high].map((v) => r(x(Number.isFinite(v) ? v : row.value)));
     const at = r(x(row.value));
     return [
-      `<text x="${left}" y="${y - 14}">${escaped(row.name)}</text>`,
+      `<text x="${left}" y="${y - 14}">${escaped(shortened(row.name))}</text>`,
       `<line x1="${left}" x2="${at}" y1="${y}" y2="${y}" stroke="currentColor" stroke-width="1" opacity="0.35"/>`,
       `<line x1="${low}" x2="${high}" y1="${y}" y2="${y}" stroke="currentColor" stroke-width="5"/>`,
       `<circle cx="${at}" cy="${y}" r="5" fill="currentColor"/>`,
@@ -49,3 +51,6 @@ export function intervalChart(chart: IntervalChart): string {
     `<text x="${(left + width - right) / 2}" y="${bottom + 36}" text-anchor="middle">${escaped(chart.xLabel)}</text>`,
   ]);
 }
+
+const shortened = (name: string) =>
+  name.length > longestName ? `${name.slice(0, longestName - 1).trimEnd()}…` : name;

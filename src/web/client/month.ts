@@ -13,6 +13,7 @@ interface Progress {
 async function look(): Promise<void> {
   try {
     const answer = await fetch(`${location.pathname}/progress`);
+    // A server that was started anew does not know it: its page says so.
     if (answer.status === 404 || answer.status === 422) return location.reload();
     const { state, at: words, percent } = (await answer.json()) as Progress;
     if (state !== 'running') return location.reload();
@@ -24,4 +25,8 @@ async function look(): Promise<void> {
   setTimeout(() => void look(), everyMs);
 }
 
-if (bar !== null) setTimeout(() => void look(), everyMs);
+/** A page that waits for its own answer asks for itself again. */
+const reloads = bar?.classList.contains('reload') === true;
+
+if (reloads) setTimeout(() => location.reload(), everyMs);
+else if (bar !== null) setTimeout(() => void look(), everyMs);

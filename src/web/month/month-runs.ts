@@ -1,8 +1,8 @@
 import { createHash } from 'node:crypto';
-import { runScenarios } from '../../cli/month-run.js';
 import type { ExamRequest, PlanningGround } from '../../planning/index.js';
 import { ProblemError } from '../../shared/index.js';
-import { PlanBook, type Comparison, type Scenario } from '../../throughput/index.js';
+import type { Comparison, Scenario } from '../../throughput/index.js';
+import { MonthDesk } from '../../throughput/pool/month-desk.js';
 
 export interface MonthRun {
   readonly id: string;
@@ -28,7 +28,8 @@ export interface MonthRunsOptions {
 }
 
 const mostAtOnce = 2;
-const mostKept = 20;
+/** Finished runs kept to be looked at again. */
+export const mostKept = 20;
 
 /**
  * Simulations of this server: started, watched, stopped. The same scenarios on the same records are the same run, whoever asks:
@@ -36,11 +37,16 @@ const mostKept = 20;
  */
 export class MonthRuns {
   private readonly runs = new Map<string, Running>();
-  /** Plans kept for every page that simulates. */
-  readonly book: PlanBook;
+  /** The thread that plans and simulates, for every page that asks. */
+  readonly desk: MonthDesk;
+  private readonly log: MonthRunsOptions['log'];
 
-  constructor(private readonly options: MonthRunsOptions) {
-    this.book = new PlanBook(options.ground);
+  constructor({ ground, threads, workerFile, log }: MonthRunsOptions) {
+    this.log = log;
+    this.desk = new MonthDesk({
+      ...{ library: ground.library, threads },
+      ...(workerFile === undefined ? {} : { workerFile }),
+    });
   }
 
   /** @throws ProblemError when others are running already */
@@ -87,17 +93,13 @@ export class MonthRuns {
   }
 
   private async run(run: Running, requests: readonly ExamRequest[]): Promise<void> {
-    const { ground, threads, workerFile, log } = this.options;
     const update = (change: Partial<MonthRun>) => {
       const now = this.runs.get(run.id);
       if (now !== undefined) this.runs.set(run.id, { ...now, ...change });
     };
     try {
-      const comparison = await runScenarios(run.scenarios, requests, ground, {
-        threads,
-        book: this.book,
+      const comparison = await this.desk.compare(run.scenarios, requests, {
         signal: run.stop.signal,
-        ...(workerFile === undefined ? {} : { workerFile }),
         onPlanned: (done, of) => update({ share: (planningShare * done) / of }),
         onMonth: (done, of) =>
           update({
@@ -113,7 +115,9 @@ export class MonthRuns {
         ...(enough ? { comparison } : {}),
       });
     } catch (error) {
-      log('simulation failed', { error: error instanceof Error ? error.stack : String(error) });
+      this.log('simulation failed', {
+        error: error instanceof Error ? error.stack : String(error),
+      });
       update({ state: 'failed' });
     }
   }

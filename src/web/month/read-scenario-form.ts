@@ -9,7 +9,7 @@ import {
   type SlotRule,
 } from '../../throughput/index.js';
 import { numberFields, type ScenarioValues } from '../view-models/scenario-fields.js';
-import { mostAlike } from '../view-models/scenario-form.js';
+import { mostAlike, teamNumbers } from '../view-models/scenario-form.js';
 
 /** A scenario from the form's fields, with everything that is wrong at its field; a field that cannot be read is no number. */
 export function readScenarioForm(
@@ -36,7 +36,7 @@ export function readScenarioForm(
     content: values['content'] === 'full protocol' ? 'full protocol' : 'planned',
     quickLooks: values['quickLooks'] === 'yes',
     groupByCoil: values['groupByCoil'] === 'yes',
-    teams: teamsIn(values),
+    teams: teamsIn(values, unreadable),
     ...(examShares === undefined ? {} : { examShares }),
     ...(groupShares === undefined ? {} : { groupShares }),
   };
@@ -157,16 +157,15 @@ function stretchesIn(text: string): readonly DayStretch[] | undefined {
   return read.includes(undefined) ? undefined : (read as DayStretch[]);
 }
 
-function teamsIn(values: ScenarioValues): Scenario['teams'] {
-  return [0, 1].flatMap((n) => {
+function teamsIn(values: ScenarioValues, problems: FieldProblem[]): Scenario['teams'] {
+  return teamNumbers(values).flatMap((n) => {
     const name = (values[`team ${n} name`] ?? '').trim();
-    if (name === '') return [];
-    return [
-      {
-        name,
-        count: numberIn((values[`team ${n} count`] ?? '').trim()),
-        groups: patientGroups.filter((g): g is PatientGroup => values[`team ${n} ${g}`] === 'yes'),
-      },
-    ];
+    const count = (values[`team ${n} count`] ?? '').trim();
+    const groups = patientGroups.filter(
+      (g): g is PatientGroup => values[`team ${n} ${g}`] === 'yes',
+    );
+    if (name === '' && (count !== '' || groups.length > 0))
+      problems.push(wrong('teams', '', 'a team has a name'));
+    return name === '' ? [] : [{ name, count: numberIn(count), groups }];
   });
 }

@@ -1,16 +1,16 @@
 import { Router } from 'express';
 import { monthCsv } from '../../cli/text/month-csv.js';
 import { ProblemError } from '../../shared/index.js';
+import type { Scenario } from '../../throughput/index.js';
 import type { StoredScenario } from '../../store/index.js';
-import { gone } from '../board-fields.js';
 import type { PageDeps } from '../deps.js';
-import type { MonthRuns } from '../month/month-runs.js';
+import { mostKept, type MonthRuns } from '../month/month-runs.js';
 import { demandRecords, monthRecords } from '../month/records.js';
 import { takeTold } from '../told.js';
+import { monthCaveats } from '../view-models/month-caveats.js';
 import { monthList } from '../view-models/month-list.js';
 import { monthResults } from '../view-models/month-results.js';
 
-const leastCompared = 1;
 const mostCompared = 6;
 
 /** The month: scenarios side by side, simulated while the page waits, stopped at will. */
@@ -22,7 +22,7 @@ export function monthRoutes(deps: PageDeps, runs: MonthRuns): Router {
     response.render('month', {
       title: 'The month',
       told: takeTold(request, response),
-      page: monthList(stored, runs.list()),
+      page: monthList(stored, runs.list(), mostCompared),
       mostCompared,
     });
   });
@@ -32,13 +32,15 @@ export function monthRoutes(deps: PageDeps, runs: MonthRuns): Router {
     const ticked = [form['scenario'] ?? []].flat().map(String);
     const against = typeof form['against'] === 'string' ? form['against'] : '';
     const stored = await deps.store.scenarios.list();
-    const chosen = stored.filter((s) => ticked.includes(s.id));
-    if (chosen.length < leastCompared || chosen.length > mostCompared) {
+    const anyTicked = stored.some((s) => ticked.includes(s.id));
+    // What the others are held against is simulated too, ticked or not.
+    const chosen = stored.filter((s) => ticked.includes(s.id) || (anyTicked && s.id === against));
+    if (chosen.length < 1 || chosen.length > mostCompared) {
       throw new ProblemError({
         code: 'month-compare',
         thing: 'scenarios to compare',
-        value: `${chosen.length} ticked`,
-        limit: `two to ${mostCompared}, or one to look at by itself`,
+        value: `${chosen.length} chosen`,
+        limit: `one to ${mostCompared}, the one under "Against" included`,
         wayOut: 'Go back and tick the ones to compare.',
       });
     }
@@ -54,7 +56,12 @@ export function monthRoutes(deps: PageDeps, runs: MonthRuns): Router {
       title: 'Scenarios side by side',
       run,
       percent: Math.round(100 * run.share),
-      results: run.comparison === undefined ? undefined : monthResults(run.comparison),
+      ...(run.comparison === undefined
+        ? { results: undefined, caveats: [] }
+        : {
+            results: monthResults(run.comparison),
+            caveats: monthCaveats(run.comparison, run.scenarios, run.records),
+          }),
     });
   });
 
@@ -69,6 +76,13 @@ export function monthRoutes(deps: PageDeps, runs: MonthRuns): Router {
     response.redirect(303, `/month/runs/${id}`);
   });
 
+  router.post('/month/runs/:id/again', async (request, response) => {
+    const { scenarios } = running(String(request.params.id));
+    const { requests } = await monthRecords(deps);
+    demandRecords(requests);
+    response.redirect(303, `/month/runs/${runs.start(scenarios, requests).id}`);
+  });
+
   router.get('/month/runs/:id/table.csv', (request, response) => {
     response.type('text/csv').send(monthCsv(comparisonOf(String(request.params.id))));
   });
@@ -79,21 +93,44 @@ export function monthRoutes(deps: PageDeps, runs: MonthRuns): Router {
 
   function running(id: string) {
     const run = runs.get(id);
-    if (run === undefined) throw gone('simulation', id);
+    if (run === undefined) throw forgotten(id);
     return run;
   }
 
   function comparisonOf(id: string) {
     const { comparison } = running(id);
-    if (comparison === undefined) throw gone('result of simulation', id);
+    if (comparison === undefined) throw unfinished(id);
     return comparison;
   }
 
   return router;
 }
 
-/** The one that the others are held against comes first. */
-function inOrder(chosen: readonly StoredScenario[], against: string) {
+/** The one that the others are held against comes first; scenarios of one name are told apart by their number. */
+function inOrder(chosen: readonly StoredScenario[], against: string): readonly Scenario[] {
   const first = chosen.filter((s) => s.id === against);
-  return [...first, ...chosen.filter((s) => s.id !== against)].map((s) => s.scenario);
+  const ordered = [...first, ...chosen.filter((s) => s.id !== against)];
+  return ordered.map(({ id, scenario }) => {
+    const alone = chosen.filter((s) => s.scenario.name === scenario.name).length === 1;
+    return alone ? scenario : { ...scenario, name: `${scenario.name} (${id})` };
+  });
 }
+
+const forgotten = (id: string) =>
+  new ProblemError({
+    code: 'month-run-forgotten',
+    thing: `simulation ${id}`,
+    value: 'not known here',
+    limit: `results are kept until the server is started anew, and the last ${mostKept} of them`,
+    wayOut:
+      'Open The month and compare the scenarios again: the same scenarios give the same result.',
+  });
+
+const unfinished = (id: string) =>
+  new ProblemError({
+    code: 'month-run-unfinished',
+    thing: `table of simulation ${id}`,
+    value: 'not there yet',
+    limit: 'it is made when the simulation has ended',
+    wayOut: 'Look at the page of the simulation.',
+  });

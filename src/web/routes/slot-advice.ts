@@ -1,15 +1,15 @@
 import { Router } from 'express';
 import { ProblemError } from '../../shared/index.js';
-import { adviceTable, type AdviceRow } from '../../throughput/index.js';
 import type { PageDeps } from '../deps.js';
+import { AdviceRuns, type Advice } from '../month/advice-runs.js';
 import type { MonthRuns } from '../month/month-runs.js';
 import { demandRecords, monthRecords } from '../month/records.js';
 import { slotAdvicePage } from '../view-models/slot-advice-page.js';
-import { breath } from '../waiting-requests.js';
 
 /** How long a slot should be, per exam and patient group: for a wished chance, and by the balance of late against idle. */
 export function slotAdviceRoutes(deps: PageDeps, runs: MonthRuns): Router {
   const router = Router();
+  const advices = new AdviceRuns(runs.desk);
 
   router.get('/month/slots', async (request, response) => {
     const text = (field: string, otherwise: string) => {
@@ -28,28 +28,23 @@ export function slotAdviceRoutes(deps: PageDeps, runs: MonthRuns): Router {
       idleCost: inRange('cost of a minute idle', values.idle, 0.01, 1000),
       quickLooks: values.quick === 'yes',
     };
-    const rows = request.query['chance'] === undefined ? undefined : await adviceRows();
+    const advice = request.query['chance'] === undefined ? undefined : await adviceNow();
     const query = new URLSearchParams(values).toString();
     response.render('slots', {
       title: 'How long should a slot be?',
       values,
       query,
+      working: advice?.kind === 'working' ? advice : undefined,
       page:
-        rows === undefined
-          ? undefined
-          : slotAdvicePage(rows, asked, { exam: text('exam', ''), group: text('group', '') }),
+        advice?.kind === 'rows'
+          ? slotAdvicePage(advice.rows, asked, { exam: text('exam', ''), group: text('group', '') })
+          : undefined,
     });
 
-    async function adviceRows(): Promise<readonly AdviceRow[]> {
+    async function adviceNow(): Promise<Advice> {
       const { requests } = await monthRecords(deps);
       demandRecords(requests);
-      const run = adviceTable(requests, deps.department.scanners, deps.ground, runs.book, asked);
-      let step = run.next();
-      while (step.done !== true) {
-        await breath();
-        step = run.next();
-      }
-      return step.value;
+      return advices.get(requests, deps.department.scanners, asked);
     }
   });
 

@@ -3,9 +3,15 @@ import type { Scenario, SlotRule } from '../../throughput/index.js';
 import type { MonthRun } from '../month/month-runs.js';
 
 /** Scenarios and runs as the month's page lists them. */
-export function monthList(stored: readonly StoredScenario[], runs: readonly MonthRun[]) {
+export function monthList(
+  stored: readonly StoredScenario[],
+  runs: readonly MonthRun[],
+  mostCompared: number,
+) {
   return {
-    scenarios: stored.map(({ id, version, scenario }) => ({
+    scenarios: stored.map(({ id, version, scenario }, n) => ({
+      // The first and the newest: a scenario just described is among them.
+      ticked: n === 0 || n > stored.length - mostCompared,
       id,
       version,
       name: scenario.name,

@@ -22,8 +22,8 @@ const drawn: readonly Measure[] = [
 const verdictWords: Readonly<Record<Finding['verdict'], string>> = {
   better: 'Better',
   worse: 'Worse',
-  changed: 'Changed',
-  unchanged: 'Unchanged',
+  changed: 'Different',
+  unchanged: 'Undecided',
 };
 
 /** A comparison in words, charts and a table. */
@@ -80,7 +80,9 @@ const withLimits = (measure: Measure, { mean, low, high }: Estimate) =>
   `${measureFigure(measure, mean)} (${measureFigure(measure, low)} to ${measureFigure(measure, high)})`;
 
 function differenceWords(measure: Measure, { mean, low, high }: Estimate): string {
-  const signed = (v: number) =>
-    v > 0 ? `+${measureFigure(measure, v)}` : measureFigure(measure, v);
+  const signed = (v: number) => {
+    const figure = measureFigure(measure, v);
+    return Number(figure) > 0 ? `+${figure}` : figure;
+  };
   return `${signed(mean)} (${signed(low)} to ${signed(high)})`;
 }

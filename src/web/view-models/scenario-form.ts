@@ -61,27 +61,42 @@ export function rootOf(id: string, own: readonly Scanner[]): string {
 export const stretchesText = (stretches: Scanner['hours']): string =>
   stretches.map((s) => `${clock(s.fromMin)}-${clock(s.toMin)}`).join(', ');
 
-/** Everything the form shows. */
-export function scenarioForm(
-  values: ScenarioValues,
+/** Scanners that a form asks for: the department's, and those of its scenario that the department no longer has. */
+export function scannersAsked(
   own: readonly Scanner[],
-  library: SiteLibrary,
-  examsOnRecord: ReadonlySet<string>,
-  { scenario: usual, sources }: SourcedScenario,
-  problems: readonly FieldProblem[],
-) {
+  described: readonly Scanner[] = [],
+): readonly Scanner[] {
+  const others = described.filter((s) => !own.some((o) => o.id === rootOf(s.id, own)));
+  return [...own, ...others.filter((s) => rootOf(s.id, others) === s.id)];
+}
+
+export interface ScenarioFormGround {
+  readonly values: ScenarioValues;
+  readonly own: readonly Scanner[];
+  readonly library: SiteLibrary;
+  readonly examsOnRecord: ReadonlySet<string>;
+  readonly usual: SourcedScenario;
+  readonly problems: readonly FieldProblem[];
+}
+
+/** Everything the form shows. */
+export function scenarioForm(ground: ScenarioFormGround) {
+  const { values, own, library, examsOnRecord, problems } = ground;
+  const { scenario: usual, sources } = ground.usual;
   const said = new Map<string, string>();
   for (const { field, problem } of problems)
     said.set(field, `${problem.value} does not fit: ${problem.limit}. ${problem.wayOut}`);
   const at = (field: string) => said.get(field);
+  const given = (field: string) => (values[field] ?? '') !== '';
   const exams = [...library.exams.values()]
-    .filter((e) => examsOnRecord.has(e.id))
+    .filter(({ id }) => examsOnRecord.has(id) || given(`exam ${id}`) || given(`slot ${id}`))
     .map(({ id, name }) => ({
-      id,
-      name,
-      share: values[`exam ${id}`] ?? '',
-      slot: values[`slot ${id}`] ?? '',
+      ...{ id, name, share: values[`exam ${id}`] ?? '', slot: values[`slot ${id}`] ?? '' },
+      problem: at(`slot ${id}`),
     }));
+  const groups = patientGroups
+    .filter((g) => g !== 'emergency' || given('group emergency'))
+    .map((id) => ({ id, name: groupNames[id], share: values[`group ${id}`] ?? '' }));
   return {
     values,
     at,
@@ -106,10 +121,11 @@ export function scenarioForm(
     })),
     slotsMin,
     exams,
-    groups: patientGroups
-      .filter((g) => g !== 'emergency')
-      .map((id) => ({ id, name: groupNames[id], share: values[`group ${id}`] ?? '' })),
-    teams: [0, 1].map((n) => ({
+    groups,
+    /** Whether the mix or slots by exam say anything: they are shown open then. */
+    mixOpen:
+      exams.some((e) => e.share !== '' || e.slot !== '') || groups.some((g) => g.share !== ''),
+    teams: teamNumbers(values).map((n) => ({
       n,
       name: values[`team ${n} name`] ?? '',
       count: values[`team ${n} count`] ?? '',
@@ -121,6 +137,15 @@ export function scenarioForm(
     })),
     mixSource: sources['mix'] ?? '',
   };
+}
+
+/** Teams that the form asks for: two, or as many as were given. */
+export function teamNumbers(values: ScenarioValues): readonly number[] {
+  const given = Object.keys(values).flatMap((key) => {
+    const number = /^team (\d) name$/.exec(key)?.[1];
+    return number === undefined ? [] : [Number(number)];
+  });
+  return Array.from({ length: Math.max(1, ...given) + 1 }, (_, n) => n);
 }
 
 /** Where the usual value comes from, with the value: what stands in the field may have been changed. */

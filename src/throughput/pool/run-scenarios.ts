@@ -1,15 +1,12 @@
-import type { ExamRequest, PlanningGround } from '../planning/index.js';
-import {
-  compareRuns,
-  PlanBook,
-  workOut,
-  type Comparison,
-  type Scenario,
-  type WorkedOut,
-} from '../throughput/index.js';
-import { simulateMonths } from '../throughput/pool/month-pool.js';
+import type { ExamRequest, PlanningGround } from '../../planning/index.js';
+import { compareRuns, type Comparison } from '../compare.js';
+import { PlanBook } from '../plan-book.js';
+import type { Scenario } from '../scenario.js';
+import { workOut, type WorkedOut } from '../work-out.js';
+import { simulateMonths } from './month-pool.js';
 
-export interface MonthRunOptions {
+export interface RunOptions {
+  /** Threads that months are simulated in; planning is done by the caller's own. */
   readonly threads: number;
   readonly signal?: AbortSignal;
   readonly workerFile?: URL;
@@ -24,7 +21,7 @@ export async function runScenarios(
   scenarios: readonly Scenario[],
   requests: readonly ExamRequest[],
   ground: PlanningGround,
-  options: MonthRunOptions,
+  options: RunOptions,
 ): Promise<Comparison> {
   const book = options.book ?? new PlanBook(ground);
   const worked: WorkedOut[] = [];
@@ -56,7 +53,8 @@ export async function runScenarios(
     scenarios.map(({ name, daysAMonth }, n) => ({
       ...{ name, daysAMonth },
       months: records[n] ?? [],
-      leftOut: worked[n]?.leftOut ?? [],
+      leftOut: worked[n]!.leftOut,
+      kinds: worked[n]!.kinds,
     })),
     stopped,
   );
