@@ -1,8 +1,8 @@
 import type { MessagePort } from 'node:worker_threads';
-import type { PlanningGround } from '../../planning/index.js';
+import type { ExamRequest, PlanningGround } from '../../planning/index.js';
 import { adviceTable } from '../advice-table.js';
 import { PlanBook } from '../plan-book.js';
-import type { DeskAnswer, DeskAsked, DeskMessage } from './desk-messages.js';
+import type { DeskAnswer, DeskAsked, DeskMessage, RequestsAsText } from './desk-messages.js';
 import { runScenarios } from './run-scenarios.js';
 
 /** Does what the server asks of its month thread; several at once take turns, and each can be stopped. */
@@ -35,7 +35,7 @@ export function serveDesk(port: MessagePort, ground: PlanningGround): void {
 
   function compare(asked: Extract<DeskAsked, { kind: 'compare' }>, signal: AbortSignal) {
     const { id, scenarios, requests, threads, workerFile } = asked;
-    return runScenarios(scenarios, requests, ground, {
+    return runScenarios(scenarios, read(requests), ground, {
       ...{ threads, book, signal },
       ...(workerFile === undefined ? {} : { workerFile: new URL(workerFile) }),
       onPlanned: (done, of) => say({ kind: 'planned', id, done, of }),
@@ -45,7 +45,7 @@ export function serveDesk(port: MessagePort, ground: PlanningGround): void {
 
   async function advise(asked: Extract<DeskAsked, { kind: 'advice' }>, signal: AbortSignal) {
     const { id, requests, scanners, asked: wanted } = asked;
-    const run = adviceTable(requests, scanners, ground, book, wanted);
+    const run = adviceTable(read(requests), scanners, ground, book, wanted);
     let step = run.next();
     while (step.done !== true) {
       say({ kind: 'planned', id, ...step.value });
@@ -56,3 +56,5 @@ export function serveDesk(port: MessagePort, ground: PlanningGround): void {
     return step.value;
   }
 }
+
+const read = (requests: RequestsAsText) => JSON.parse(requests) as readonly ExamRequest[];

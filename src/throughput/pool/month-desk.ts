@@ -1,9 +1,11 @@
 import { Worker } from 'node:worker_threads';
+import type { Scanner } from '../../day/index.js';
 import type { SiteLibrary } from '../../exams/index.js';
 import type { ExamRequest } from '../../planning/index.js';
 import type { AdviceRow } from '../advice-table.js';
 import type { Comparison } from '../compare.js';
 import type { Scenario } from '../scenario.js';
+import type { AdviceAsked } from '../slot-advice.js';
 import type { DeskAnswer, DeskAsked, DeskMessage } from './desk-messages.js';
 import type { Role } from './month-pool.js';
 
@@ -49,7 +51,7 @@ export class MonthDesk {
     const { threads, workerFile } = this.options;
     return this.ask(
       {
-        ...{ kind: 'compare', scenarios, requests, threads },
+        ...{ kind: 'compare', scenarios, requests: JSON.stringify(requests), threads },
         ...(workerFile === undefined ? {} : { workerFile: workerFile.href }),
       },
       watch,
@@ -58,10 +60,15 @@ export class MonthDesk {
 
   /** @throws Error what broke inside the thread */
   advise(
-    asked: Omit<Extract<DeskAsked, { kind: 'advice' }>, 'id' | 'kind'>,
+    requests: readonly ExamRequest[],
+    scanners: readonly Scanner[],
+    asked: AdviceAsked & { readonly quickLooks: boolean },
     watch: Watch = {},
   ): Promise<readonly AdviceRow[]> {
-    return this.ask({ kind: 'advice', ...asked }, watch) as Promise<readonly AdviceRow[]>;
+    return this.ask(
+      { kind: 'advice', requests: JSON.stringify(requests), scanners, asked },
+      watch,
+    ) as Promise<readonly AdviceRow[]>;
   }
 
   private ask(asked: Unnumbered<DeskAsked>, watch: Watch): Promise<unknown> {

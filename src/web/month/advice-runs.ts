@@ -49,15 +49,12 @@ export class AdviceRuns {
   ): Asked {
     const one: Asked = {
       ...{ done: 0, of: 0 },
-      answer: this.desk.advise(
-        { requests, scanners, asked },
-        {
-          onPlanned: (done, of) => {
-            one.done = done;
-            one.of = of;
-          },
+      answer: this.desk.advise(requests, scanners, asked, {
+        onPlanned: (done, of) => {
+          one.done = done;
+          one.of = of;
         },
-      ),
+      }),
     };
     this.asked.set(key, one);
     one.answer.catch(() => this.asked.delete(key));

@@ -2,12 +2,15 @@ import type { ExamRequest } from '../../planning/index.js';
 import { ProblemError } from '../../shared/index.js';
 import { usualScenario, type SourcedScenario } from '../../throughput/index.js';
 import type { PageDeps } from '../deps.js';
+import { breath } from '../waiting-requests.js';
 
 /** What the month is simulated from: the requests on record and the department as it is. */
 export async function monthRecords(
   deps: Pick<PageDeps, 'store' | 'department'>,
 ): Promise<{ readonly requests: readonly ExamRequest[]; readonly usual: SourcedScenario }> {
   const requests = (await deps.store.requests.list()).map((r) => r.body);
+  // Thousands of requests take a while to read: others come before they are gone through.
+  await breath();
   const bookings = await deps.store.bookings.listBetween('0000-01-01', '9999-12-31', {
     withCancelled: true,
   });
