@@ -87,9 +87,7 @@ function nameProblems({ name }: Scenario): FieldProblem[] {
 
 function scannerProblems({ scanners }: Scenario): FieldProblem[] {
   if (scanners.length === 0)
-    return [
-      problem('scanners', 'none', 'a department has a scanner', 'Tick at least one scanner.'),
-    ];
+    return [problem('scanners', 'none', 'a department has a scanner', 'Give it at least one.')];
   const found: FieldProblem[] = [];
   if (scanners.length > mostScanners)
     found.push(

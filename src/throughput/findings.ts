@@ -31,7 +31,6 @@ const spoken: readonly Measure[] = [
   'waitNinetiethMin',
   'emergencyWaitMedianMin',
   'sentHomePerDay',
-  'daysWaitedMedian',
   'listAtEnd',
   'idleMinPerScannerDay',
 ];
@@ -74,11 +73,13 @@ function sentenceOf(
   differences: Estimates,
   { before, after }: FindingGround,
 ): string {
-  const [more, fewer] = measureWords[measure].change;
-  const { mean } = differences[measure];
-  const words = (mean > 0 ? more : fewer).replace('{}', sizeOf(measure, differences[measure]));
+  const [more, less] = measureWords[measure].change;
   const [now, then] = [after, before].map((e) => measureFigure(measure, e[measure].mean));
-  return `${words}: ${now} instead of ${then}.`;
+  const words = differences[measure].mean > 0 ? more : less;
+  return `${words
+    .replace('{change}', sizeOf(measure, differences[measure]))
+    .replace('{now}', now!)
+    .replace('{then}', then!)}.`;
 }
 
 /** The change without its sign, with its limits behind it. */

@@ -11,7 +11,7 @@ export interface MeasureWords {
   readonly times: number;
   /** Decimals printed. */
   readonly digits: number;
-  /** A rise and a fall in words; the size of the change stands at {}. */
+  /** A rise and a fall in words; the size of the change goes to {change}, the values to {now} and {then}. */
   readonly change: readonly [string, string];
 }
 
@@ -24,10 +24,16 @@ const measure = (
   digits = 1,
 ): MeasureWords => ({ name, means, unit, better, times: unit === '%' ? 100 : 1, digits, change });
 
-/** A change said the same way up and down. */
-const either = (words: (more: string) => string): readonly [string, string] => [
-  words('more'),
-  words('fewer'),
+/** Things counted, a change said the same way up and down. */
+const counted = (what: string): readonly [string, string] => [
+  `{change} more ${what}: {now} instead of {then}`,
+  `{change} fewer ${what}: {now} instead of {then}`,
+];
+
+/** A span that a part of the patients stay within. */
+const within = (who: string, unit: string): readonly [string, string] => [
+  `${who} {now} ${unit} instead of {then}: {change} ${unit} more`,
+  `${who} {now} ${unit} instead of {then}: {change} ${unit} less`,
 ];
 
 export const measureWords: Readonly<Record<Measure, MeasureWords>> = {
@@ -36,71 +42,63 @@ export const measureWords: Readonly<Record<Measure, MeasureWords>> = {
     'a day',
     'more',
     'Emergencies and those who come back included: who comes twice counts twice.',
-    either((more) => `{} ${more} patients are served a day`),
+    counted('patients a day are served'),
   ),
   diagnosticPerDay: measure(
     'Questions answered diagnostically',
     'a day',
     'more',
     'Each clinical question counts once, however many visits it took.',
-    either((more) => `{} ${more} questions are answered diagnostically a day`),
+    counted('questions a day are answered diagnostically'),
   ),
   belowDiagnosticPerDay: measure(
     'Questions left below diagnostic',
     'a day',
     'less',
     'Targeted (this question only), screening-grade (not diagnostic) or not answered: still owed. A question left open at two visits counts twice.',
-    either((more) => `{} ${more} questions are left below diagnostic a day, and stay owed`),
+    counted('questions a day stay below diagnostic'),
   ),
   quickLookOnlyShare: measure(
     'Left with quick looks only (not diagnostic)',
     '%',
     'less',
-    'Of the patients served, those who leave with something seen and nothing diagnostic.',
-    either(
-      (more) => `{} ${more} patients in a hundred leave with quick looks only (not diagnostic)`,
-    ),
+    'Of the patients served, those who leave with something seen and nothing diagnostic; an exam that was broken off before counts too.',
+    counted('patients in a hundred leave with quick looks only (not diagnostic)'),
   ),
   followUpsPerDay: measure(
     'Exams that come back',
     'a day',
     'less',
     'Asked for again because answers are owed.',
-    either((more) => `{} ${more} exams come back a day because answers are owed`),
+    counted('exams a day come back because answers are owed'),
   ),
   overtimeMinPerDay: measure(
     'Overtime',
     'min a day',
     'less',
     'Minutes past closing, all scanners together. A mean: a single day can be far worse.',
-    either((more) => `{} ${more} minutes of overtime a day, all scanners together`),
+    counted('minutes of overtime a day, all scanners together'),
   ),
   overrunShare: measure(
     'Exams longer than their slot',
     '%',
     'less',
     'Of the booked exams, those that take the scanner longer than their slot, with the coil change and the wait for the cannula before them.',
-    either((more) => `{} ${more} booked exams in a hundred run longer than their slot`),
+    counted('booked exams in a hundred run longer than their slot'),
   ),
   waitMedianMin: measure(
     'Waiting on the day, half within',
     'min',
     'less',
     'From the appointment, or a later arrival, to the start. Who is sent home is not counted.',
-    [
-      'The wait that half of the patients stay within grows by {} min',
-      'The wait that half of the patients stay within shrinks by {} min',
-    ],
+    within('Half of the patients wait no longer than', 'min'),
   ),
   waitNinetiethMin: measure(
     'Waiting on the day, 9 of 10 within',
     'min',
     'less',
     'Nine of ten patients wait no longer than this; one of ten waits longer.',
-    [
-      'The wait that nine of ten patients stay within grows by {} min',
-      'The wait that nine of ten patients stay within shrinks by {} min',
-    ],
+    within('Nine of ten patients wait no longer than', 'min'),
   ),
   idleMinPerScannerDay: measure(
     'Scanner standing empty',
@@ -108,8 +106,8 @@ export const measureWords: Readonly<Record<Measure, MeasureWords>> = {
     'neither',
     'Open minutes without a patient, a scanner and day. Fewer are not better as such: empty minutes are what takes up a delay.',
     [
-      'Each scanner stands empty {} min longer a day',
-      'Each scanner stands empty {} min less a day',
+      'Each scanner stands empty {change} min a day longer: {now} instead of {then}',
+      'Each scanner stands empty {change} min a day less: {now} instead of {then}',
     ],
   ),
   repeatShare: measure(
@@ -117,28 +115,28 @@ export const measureWords: Readonly<Record<Measure, MeasureWords>> = {
     '%',
     'less',
     'A whole sequence had to be run again.',
-    either((more) => `{} ${more} exams in a hundred have a sequence run again`),
+    counted('exams in a hundred have a sequence run again'),
   ),
   brokenOffShare: measure(
     'Broken off by the patient',
     '%',
     'less',
     'The patient asked to come out.',
-    either((more) => `{} ${more} exams in a hundred are broken off by the patient`),
+    counted('exams in a hundred are broken off by the patient'),
   ),
   cutShortShare: measure(
     'Cut short because the time was over',
     '%',
     'less',
     'Something was left out or taken quickly. Always 0 where the scenario lets every exam finish.',
-    either((more) => `{} ${more} exams in a hundred are cut short because the time is over`),
+    counted('exams in a hundred are cut short because the time is over'),
   ),
   sentHomePerDay: measure(
     'Sent home',
     'a day',
     'less',
     'Came and could not be started before the end of overtime; emergencies that others had to take over count too.',
-    either((more) => `{} ${more} patients are sent home unserved a day`),
+    counted('patients a day are sent home unserved'),
     2,
   ),
   noShowsPerDay: measure(
@@ -146,17 +144,14 @@ export const measureWords: Readonly<Record<Measure, MeasureWords>> = {
     'a day',
     'neither',
     'Booked and did not come; more bookings alone make more of them.',
-    either((more) => `{} ${more} patients do not come a day`),
+    counted('patients a day do not come'),
   ),
   daysWaitedMedian: measure(
     'From request to exam, half within',
     'working days',
     'less',
     'First visits that took place, emergencies not counted. Who still waits is not counted, so a growing list looks better here than it is.',
-    [
-      'The time from request to exam that half stay within grows by {} working days',
-      'The time from request to exam that half stay within shrinks by {} working days',
-    ],
+    within('Half of the first visits take place within', 'working days'),
   ),
   listAtEnd: measure(
     'Waiting list at the end of the month',
@@ -164,8 +159,8 @@ export const measureWords: Readonly<Record<Measure, MeasureWords>> = {
     'less',
     'Requests not served yet, those that come back included.',
     [
-      'The waiting list at the end of the month is longer by {}',
-      'The waiting list at the end of the month is shorter by {}',
+      'The waiting list ends the month at {now} instead of {then}: {change} more',
+      'The waiting list ends the month at {now} instead of {then}: {change} fewer',
     ],
     0,
   ),
@@ -174,10 +169,7 @@ export const measureWords: Readonly<Record<Measure, MeasureWords>> = {
     'min',
     'less',
     'From arrival to the start. Those that others had to take over are not counted.',
-    [
-      'The wait that half of the emergencies stay within grows by {} min',
-      'The wait that half of the emergencies stay within shrinks by {} min',
-    ],
+    within('Half of the emergencies wait no longer than', 'min'),
   ),
 };
 

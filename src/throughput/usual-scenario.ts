@@ -35,7 +35,7 @@ export const scenarioPriors: Readonly<Record<PriorField, Sourced<number>>> = {
   lateMeanMin: {
     value: 12,
     basis: 'assumption',
-    source: 'How late the late ones are was not found published; exponential around this mean',
+    source: 'How late the late ones are was not found published; most by less, a few by much more',
   },
   earlyMin: {
     value: 15,
@@ -118,6 +118,7 @@ export function usualScenario(
   records: OwnRecords = { bookings: 0, noShows: 0 },
 ): SourcedScenario {
   const days = Math.max(1, department.days.length);
+  const daysWords = days === 1 ? 'one day' : `${days} days`;
   const emergencies = requests.filter((r) => groupOf(r) === 'emergency').length;
   const booked = requests.length - emergencies;
   const value = (field: PriorField) => scenarioPriors[field].value;
@@ -130,7 +131,7 @@ export function usualScenario(
   );
   sources['requestsPerDay'] =
     booked > 0
-      ? `this site's own records: ${booked} requests for ${days} day(s), emergencies not counted`
+      ? `this site's own records: ${booked} requests for ${daysWords}, emergencies not counted`
       : 'assumption: no requests on record; put in the own number';
   sources['mix'] =
     requests.length > 0
@@ -138,7 +139,7 @@ export function usualScenario(
       : 'no requests on record yet: take some before anything can be simulated';
   if (emergencies > 0)
     sources['emergenciesPerDay'] =
-      `this site's own records: ${emergencies} emergencies for ${days} day(s)`;
+      `this site's own records: ${emergencies} emergencies for ${daysWords}`;
   if (ownNoShows)
     sources['noShowShare'] =
       `this site's own records: ${records.noShows} of ${records.bookings} bookings`;

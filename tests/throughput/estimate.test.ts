@@ -86,7 +86,7 @@ describe('findings', () => {
     });
     expect(more!.verdict).toBe('better');
     expect(more!.sentence).toMatch(
-      /^2\.1 \(1\.\d to 2\.\d\) more questions are answered diagnostically a day: 52\.1 instead of 50\.0\.$/,
+      /^2\.1 \(1\.\d to 2\.\d\) more questions a day are answered diagnostically: 52\.1 instead of 50\.0\.$/,
     );
     expect(worse!.verdict).toBe('worse');
     expect(worse!.sentence).toMatch(/^10\.2 \(\d+\.\d to \d+\.\d\) more minutes of overtime a day/);
@@ -95,7 +95,7 @@ describe('findings', () => {
     );
   });
 
-  it('fewer is said as fewer, and a shrinking wait as shrinking', () => {
+  it('fewer is said as fewer, and a shorter wait as less', () => {
     const wait = (waitNinetiethMin: number) => ({ ...record(50, 10), waitNinetiethMin });
     const [before, after] = [
       [wait(12), wait(13)],
@@ -109,7 +109,7 @@ describe('findings', () => {
     expect(scenarios[1]!.findings[0]).toMatchObject({
       verdict: 'better',
       sentence:
-        'The wait that nine of ten patients stay within shrinks by 6.0 (5.9 to 6.1) min: 6.5 instead of 12.5.',
+        'Nine of ten patients wait no longer than 6.5 min instead of 12.5: 6.0 (5.9 to 6.1) min less.',
     });
   });
 

@@ -68,7 +68,7 @@ describe('the month over HTTP', () => {
     const html = await site.page(run);
     expect(html).toContain('against Fixed 30 minutes, full protocol');
     expect(html).toMatch(
-      /\d+\.\d \(\d+\.\d to \d+\.\d\) more questions are answered diagnostically a day: \d/,
+      /\d+\.\d \(\d+\.\d to \d+\.\d\) more questions a day are answered diagnostically: \d/,
     );
     expect(html.match(/<svg/g)!.length).toBeGreaterThanOrEqual(6);
     const csv = await site.page(`${run}/table.csv`);
@@ -114,7 +114,7 @@ describe('the month over HTTP', () => {
   it('slot advice gives a slot per exam and group, and refuses what is no chance', async () => {
     const html = await site.page('/month/slots?chance=90&late=3&idle=1&exam=knee&group=settled');
     expect(html).toContain('Knee, outpatients who keep still');
-    expect(html).toContain('Late and idle minutes balance at');
+    expect(html).toContain('the cheapest slot is');
     const bad = await fetch(`${site.url}/month/slots?chance=120`);
     expect(bad.status).toBe(422);
   });

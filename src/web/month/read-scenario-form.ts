@@ -8,7 +8,7 @@ import {
   type Scenario,
   type SlotRule,
 } from '../../throughput/index.js';
-import { numberFields, type ScenarioValues } from '../view-models/scenario-fields.js';
+import { fieldLabel, numberFields, type ScenarioValues } from '../view-models/scenario-fields.js';
 import { mostAlike, teamNumbers } from '../view-models/scenario-form.js';
 
 /** A scenario from the form's fields, with everything that is wrong at its field; a field that cannot be read is no number. */
@@ -40,15 +40,21 @@ export function readScenarioForm(
     ...(examShares === undefined ? {} : { examShares }),
     ...(groupShares === undefined ? {} : { groupShares }),
   };
-  const found = checkScenario(scenario, { examIds }).map((p) => inFormWords(p, values));
+  const found = checkScenario(scenario, { examIds });
   const fields = new Set(unreadable.map((p) => p.field));
-  return { scenario, problems: [...unreadable, ...found.filter((p) => !fields.has(p.field))] };
+  const problems = [...unreadable, ...found.filter((p) => !fields.has(p.field))];
+  return { scenario, problems: problems.map((p) => inFormWords(p, values, own)) };
 }
 
-/** What was typed, and the limit as the form asks for it. */
-function inFormWords({ field, problem }: FieldProblem, values: ScenarioValues): FieldProblem {
+/** The field as the form calls it, what was typed, and the limit as the form asks for it. */
+function inFormWords(
+  { field, problem }: FieldProblem,
+  values: ScenarioValues,
+  own: readonly Scanner[],
+): FieldProblem {
   const asked = numberFields.find((f) => f.field === field);
-  if (asked === undefined || problem.code !== 'scenario-value') return { field, problem };
+  if (asked === undefined || problem.code !== 'scenario-value')
+    return { field, problem: { ...problem, thing: asked?.label ?? fieldLabel(field, own) } };
   const { low, high } = scenarioRanges[asked.field];
   const typed = (values[field] ?? '').trim();
   return {

@@ -13,7 +13,7 @@ export function monthCaveats(
 ): readonly string[] {
   const wanted = described.some((s) => s.examShares ?? s.groupShares);
   return [
-    `${days} working days were simulated for each scenario. The mix of exams and patients is that of the ${requests} requests on record${wanted ? ', weighed where a scenario asks for other shares' : ''}.`,
+    `${days.toLocaleString('en-GB')} working days were simulated for each scenario. The mix of exams and patients is that of the ${requests} requests on record${wanted ? ', weighed where a scenario asks for other shares' : ''}.`,
     ...standInWords(scenarios),
     ...(allAlike(described, (s) => s.seed)
       ? []

@@ -1,3 +1,4 @@
+import type { Scanner } from '../../day/index.js';
 import type { Scenario } from '../../throughput/index.js';
 
 /** Form fields as text. */
@@ -82,7 +83,33 @@ export const numberFields: readonly NumberFieldWords[] = [
     unit: 'working days',
     section: 'after',
   },
-  { field: 'months', label: 'Months', unit: 'each begins with the same list', section: 'run' },
+  {
+    field: 'months',
+    label: 'Months',
+    unit: 'each begins with an equally long list',
+    section: 'run',
+  },
   { field: 'daysAMonth', label: 'Working days a month', unit: '', section: 'run' },
-  { field: 'seed', label: 'Seed', unit: 'the same seed gives the same patients', section: 'run' },
+  {
+    field: 'seed',
+    label: 'Seed of chance',
+    unit: 'scenarios with the same number meet the same patients',
+    section: 'run',
+  },
 ];
+
+const otherLabels: Readonly<Record<string, string>> = {
+  name: 'Name',
+  slots: 'How long is a slot?',
+  scanners: 'Scanners',
+  teams: 'Team that must be there',
+  examShares: 'Mix of exams',
+  groupShares: 'Mix of patients',
+};
+
+/** What the form calls a field that is no number of its own. */
+export function fieldLabel(field: string, own: readonly Scanner[]): string {
+  const hours = own.find((s) => field === `hours ${s.id}`);
+  if (hours !== undefined) return `Hours of ${hours.name}`;
+  return otherLabels[field] ?? (field.startsWith('slot ') ? 'Slot by exam' : field);
+}

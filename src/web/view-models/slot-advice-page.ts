@@ -40,7 +40,7 @@ function drawnRow(row: AdviceRow, asked: AdviceAsked) {
   const grid = { firstX: advice.balances[0]!.slotMin, stepX: 5 };
   return {
     name,
-    words: `With ${Math.round(100 * asked.chance)} % chance the exam ends within ${advice.forChanceMin} min. Late and idle minutes balance at ${advice.exactMin.toFixed(1)} min; of slots in steps of five, ${advice.cheapestMin} min is the cheapest: it ends in time with ${Math.round(100 * cheapest.chance)} % chance, is late by ${cheapest.lateMin.toFixed(1)} min and leaves ${cheapest.idleMin.toFixed(1)} min empty on average.`,
+    words: `In a slot of ${advice.forChanceMin} min the exam ends in time with at least ${Math.round(100 * asked.chance)} % chance. At the costs given, the cheapest slot is ${advice.cheapestMin} min (${advice.exactMin.toFixed(1)} min if slots could have any length): the exam ends in time with ${Math.round(100 * cheapest.chance)} % chance, and on average runs ${cheapest.lateMin.toFixed(1)} min over and leaves ${cheapest.idleMin.toFixed(1)} min empty.`,
     charts: [
       lineChart({
         title: `Table time of ${name}`,
@@ -53,7 +53,7 @@ function drawnRow(row: AdviceRow, asked: AdviceAsked) {
         title: `What a slot costs, ${name}`,
         description: `Expected minutes late and idle by slot length; the cost is least at ${advice.cheapestMin} min.`,
         xLabel: 'Slot, min',
-        yLabel: 'Expected min',
+        yLabel: 'On average, min',
         curves: [
           { name: 'late', values: advice.balances.map((b) => b.lateMin), ...grid },
           { name: 'idle', values: advice.balances.map((b) => b.idleMin), ...grid },
