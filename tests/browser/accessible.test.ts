@@ -2,7 +2,8 @@ import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import type { Browser } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { browserPath, openBrowser, openPage, openSite, type Site } from './harness.js';
+import { openMonth, type MonthSite } from '../web/month-site.js';
+import { browserPath, openBrowser, openPage } from './harness.js';
 
 const axeSource = readFileSync(
   createRequire(import.meta.url).resolve('axe-core/axe.min.js'),
@@ -18,6 +19,9 @@ interface Violation {
   }[];
 }
 
+/** Stands for the address of a comparison that has ended. */
+const finishedRun = '/month/runs/finished';
+
 const pages = [
   '/day/2026-12-08',
   '/day/2026-12-08?gap=mr2_965_1080',
@@ -31,6 +35,11 @@ const pages = [
   '/fill?propose=1',
   '/mend',
   '/mend?what=down&day=2026-12-08&today=2026-12-08&scanner=mr2&from=10:00&to=14:00&now=10:00&propose=1',
+  '/month',
+  '/month/new',
+  '/month/scenarios/S-1',
+  '/month/slots?chance=90&exam=knee',
+  finishedRun,
   '/library',
   '/library/exams/brain-general',
   '/library/sequences/head-ax-t2-ss-half?field=3',
@@ -43,20 +52,25 @@ const pages = [
 
 // Rules: axe-core 4.14.1, WCAG 2.0 to 2.2, levels A and AA. Serious and critical findings fail.
 describe.skipIf(browserPath === undefined)('every page, light and dark', () => {
-  let site: Site;
+  let site: MonthSite;
+  let run: string;
   let browser: Browser;
   beforeAll(async () => {
-    [site, browser] = await Promise.all([openSite(), openBrowser()]);
+    [site, browser] = await Promise.all([openMonth(), openBrowser()]);
+    run = await site.compared(['S-1', 'S-3', 'S-4']);
+    await site.until(run, (p) => p.state === 'done');
   });
   afterAll(async () => {
     await browser?.close();
     await site?.close();
   });
 
+  const address = (path: string) => site.url + (path === finishedRun ? run : path);
+
   for (const path of pages) {
     it.each(['light', 'dark'] as const)(`${path}, %s`, async (colorScheme) => {
       const page = await openPage(browser, { colorScheme, bypassCSP: true });
-      const answer = await page.goto(site.url + path);
+      const answer = await page.goto(address(path));
       expect(answer?.status()).toBe(path === '/no-such-page' ? 404 : 200);
       await page.evaluate(axeSource);
       const violations = await page.evaluate(async () => {
@@ -82,7 +96,7 @@ describe.skipIf(browserPath === undefined)('every page, light and dark', () => {
   it('nothing is cut off sideways at phone width', async () => {
     const page = await openPage(browser, { viewport: { width: 390, height: 800 } });
     for (const path of pages) {
-      await page.goto(site.url + path);
+      await page.goto(address(path));
       const wider = await page.evaluate(
         () => document.documentElement.scrollWidth - window.innerWidth,
       );
