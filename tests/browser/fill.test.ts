@@ -27,7 +27,7 @@ describe.skipIf(browserPath === undefined)('filling the days', () => {
   it('shows how far it is and what it has, and books nothing by itself', async () => {
     const page = await openPage(browser);
     const before = await booked();
-    await search(page, /quick/);
+    await search(page, /3 seconds/);
     await page.getByRole('progressbar', { name: 'Done so far' }).waitFor();
     await page.getByRole('button', { name: 'Place the ticked ones' }).waitFor();
     await page.getByText(/\d+ of 9 can be placed/).waitFor();

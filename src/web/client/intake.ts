@@ -8,7 +8,9 @@ const status = document.getElementById('look-status');
 const waitMs = 120;
 let timer: ReturnType<typeof setTimeout> | undefined;
 let asked = 0;
-let shownExam = (form?.elements.namedItem('exam') as HTMLSelectElement | null)?.value;
+const examField = form?.elements.namedItem('exam') as HTMLSelectElement | null | undefined;
+/** The exam whose questions the page came with: something else may have been chosen before this script ran. */
+let shownExam = examField?.querySelector<HTMLOptionElement>('option[selected]')?.value ?? '';
 
 async function look(): Promise<void> {
   if (form === null || planHere === null || questionsHere === null) return;
@@ -32,7 +34,7 @@ async function look(): Promise<void> {
       if (open.has(details.closest('li')?.querySelector('strong')?.textContent))
         details.open = true;
     }
-    const exam = (form.elements.namedItem('exam') as HTMLSelectElement | null)?.value;
+    const exam = examField?.value ?? '';
     if (exam !== shownExam) {
       shownExam = exam;
       questionsHere.replaceChildren(
@@ -63,3 +65,5 @@ form?.addEventListener('input', (event) => {
   }
   soon();
 });
+
+if (examField && examField.value !== shownExam) soon();
