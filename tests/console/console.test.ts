@@ -141,7 +141,7 @@ describe("choices are the technologist's", () => {
     const late = [
       ...log(
         { kind: 'entered', atS: 240 },
-        { kind: 'put first', viewId: 'sagittal-t1', atS: 1320 },
+        { kind: 'put first', viewId: 'sagittal-t1', atS: 1200 },
       ),
     ];
     const shown = gradesOf(exam, late);
