@@ -1,3 +1,4 @@
+import { measureWords } from './measure-words.js';
 import type { Measure, MonthRecord } from './month-record.js';
 import { studentQuantile } from './student-t.js';
 
@@ -25,9 +26,16 @@ export function meanWithLimits(values: readonly number[], confidence = 0.95): Es
   return { mean, low: mean - half, high: mean + half };
 }
 
-/** Every measure of a scenario. */
-export const estimatesOf = (months: readonly MonthRecord[]): Estimates =>
-  perMeasure(months, (measure) => months.map((m) => m[measure]));
+/** Every measure of a scenario. No measure can fall below 0, nor a share exceed 1: what few months would allow beyond is cut off. */
+export function estimatesOf(months: readonly MonthRecord[]): Estimates {
+  const free = perMeasure(months, (measure) => months.map((m) => m[measure]));
+  const bounded = Object.entries(free).map(([measure, { mean, low, high }]) => {
+    const most = measureWords[measure as Measure].unit === '%' ? 1 : Infinity;
+    const within = (v: number) => (Number.isFinite(v) ? Math.min(most, Math.max(0, v)) : v);
+    return [measure, { mean, low: within(low), high: within(high) }];
+  });
+  return Object.fromEntries(bounded) as Estimates;
+}
 
 /**
  * What a scenario changes against another, month by month on the same patients: pairing takes out what both share

@@ -32,6 +32,15 @@ describe('limits of a mean', () => {
     expect(measureFigure('patientsPerDay', Infinity)).toBe('?');
   });
 
+  it('what cannot be negative has no negative limit, a difference may', () => {
+    const month = simulateMonth(worked(usual).department, 0);
+    const months = [0, 30].map((m) => ({ ...month, overtimeMinPerDay: m, overrunShare: m / 30 }));
+    expect(estimatesOf(months).overtimeMinPerDay).toMatchObject({ mean: 15, low: 0 });
+    expect(estimatesOf(months).overrunShare).toMatchObject({ mean: 0.5, low: 0, high: 1 });
+    const other = months.map((m) => ({ ...m, overtimeMinPerDay: 0 }));
+    expect(differencesOf(other, months).overtimeMinPerDay.low).toBeLessThan(0);
+  });
+
   it('95 % limits cover the known answer in 93 to 97 % of 1,000 repeats', () => {
     // The known answer: checks, section 6, T2: five patients at the mean, exponential service, mean wait 0.5854.
     const exact = 0.5854;

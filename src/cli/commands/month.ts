@@ -11,11 +11,12 @@ import {
 } from '../../throughput/index.js';
 import { runScenarios } from '../../throughput/pool/run-scenarios.js';
 import { demoFolder, readText } from '../files.js';
-import { openDepartment, openRequests } from '../ground.js';
+import { openDepartment } from '../ground.js';
 import { openPlanningGround } from '../own-records.js';
 import { exitCodes, print, printJson, printProblems, progressLine } from '../output.js';
 import { monthCsv } from '../text/month-csv.js';
 import { monthText } from '../text/month-text.js';
+import { usableRequests } from '../usable-requests.js';
 
 interface MonthFlags {
   readonly requests?: string;
@@ -68,9 +69,12 @@ export function addMonthCommand(program: Command): void {
 async function month(file: string | undefined, flags: MonthFlags): Promise<number> {
   const ground = await openPlanningGround(flags.library);
   const department = openDepartment(flags.department);
-  const read = openRequests(flags.requests ?? join(demoFolder, 'requests.csv'));
-  printProblems(read.problems);
-  const requests = read.requests.map((r) => r.request);
+  const { requests, problems } = usableRequests(
+    flags.requests ?? join(demoFolder, 'requests.csv'),
+    ground,
+  );
+  printProblems(problems);
+  if (requests.length === 0) return exitCodes.nothing;
   const { scenario: usual } = usualScenario(department, requests);
   const examIds = [...ground.library.exams.keys()];
   const asked =
@@ -107,5 +111,5 @@ async function month(file: string | undefined, flags: MonthFlags): Promise<numbe
   }
   if (flags.json === true) printJson(comparison);
   else print(flags.csv === true ? monthCsv(comparison) : monthText(comparison));
-  return comparison.stopped ? exitCodes.partly : exitCodes.ok;
+  return comparison.stopped || problems.length > 0 ? exitCodes.partly : exitCodes.ok;
 }

@@ -1,4 +1,5 @@
 import { measureWords, type Comparison, type Measure } from '../../throughput/index.js';
+import { quoted } from './csv-cell.js';
 
 const measures = Object.keys(measureWords) as Measure[];
 
@@ -24,7 +25,3 @@ export function monthCsv({ scenarios, days }: Comparison): string {
 
 /** Without the last digits that binary arithmetic makes up. */
 const plain = (value: number) => String(Number(value.toPrecision(10)));
-
-/** A cell of words; one that a spreadsheet would take for a formula gets an apostrophe before it. */
-const quoted = (text: string) =>
-  `"${(/^[=+\-@\t\r]/.test(text) ? `'${text}` : text).replaceAll('"', '""')}"`;
