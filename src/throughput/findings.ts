@@ -62,7 +62,8 @@ export function findingsOf(differences: Estimates, ground: FindingGround): reado
 function verdictOf(measure: Measure, differences: Estimates): Finding['verdict'] {
   const { low, high, mean } = differences[measure];
   const { better } = measureWords[measure];
-  if (low <= 0 && high >= 0) return 'unchanged';
+  // Written so that a measure no month says anything of is not told apart either.
+  if (!(low > 0 || high < 0)) return 'unchanged';
   if (Number(measureFigure(measure, mean)) === 0) return 'unchanged';
   if (better === 'neither') return 'changed';
   return mean > 0 === (better === 'more') ? 'better' : 'worse';

@@ -1,4 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { measureWords } from '../../src/throughput/index.js';
 import { changed, fieldsOf, openMonth, type MonthSite } from './month-site.js';
 
 describe('the month over HTTP', () => {
@@ -72,7 +73,7 @@ describe('the month over HTTP', () => {
     );
     expect(html.match(/<svg/g)!.length).toBeGreaterThanOrEqual(6);
     const csv = await site.page(`${run}/table.csv`);
-    expect(csv.split('\r\n')).toHaveLength(1 + 2 * 18);
+    expect(csv.split('\r\n')).toHaveLength(1 + 2 * Object.keys(measureWords).length);
     const json = JSON.parse(await site.page(`${run}/table.json`)) as { days: number };
     expect(json.days).toBe(400);
     // Asked again, it is the same run.

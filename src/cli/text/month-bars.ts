@@ -22,10 +22,13 @@ export function monthBars({ scenarios }: Comparison): string {
   return drawn
     .map((measure) => {
       const { name, unit } = measureWords[measure];
-      const top = Math.max(1e-9, ...scenarios.map((s) => s.estimates[measure].mean));
+      const means = scenarios.map((s) => s.estimates[measure].mean);
+      const top = Math.max(1e-9, ...means.filter(Number.isFinite));
       const rows = scenarios.map((s, n) => {
         const { mean } = s.estimates[measure];
-        const bar = '#'.repeat(Math.round((barWidth * Math.max(0, mean)) / top));
+        const bar = Number.isFinite(mean)
+          ? '#'.repeat(Math.round((barWidth * Math.max(0, mean)) / top))
+          : '';
         return `  ${n + 1} ${fitted(s.name, nameWidth)} ${bar.padEnd(barWidth)} ${measureFigure(measure, mean).padStart(6)}`;
       });
       return [`${name}, ${unit}`, ...rows].join('\n');
