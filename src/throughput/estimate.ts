@@ -50,13 +50,13 @@ export function differencesOf(
   return perMeasure(first, (measure) => first.map((m, i) => m[measure] - against[i]![measure]));
 }
 
+/** Months that say nothing of a measure (no emergency came, say) are left out of it. */
 function perMeasure(
   months: readonly MonthRecord[],
   values: (measure: Measure) => readonly number[],
 ): Estimates {
   const measures = Object.keys(months[0] ?? {}) as Measure[];
-  return Object.fromEntries(measures.map((m) => [m, meanWithLimits(values(m))])) as Record<
-    Measure,
-    Estimate
-  >;
+  return Object.fromEntries(
+    measures.map((m) => [m, meanWithLimits(values(m).filter((v) => !Number.isNaN(v)))]),
+  ) as Record<Measure, Estimate>;
 }

@@ -139,6 +139,13 @@ export const measureWords: Readonly<Record<Measure, MeasureWords>> = {
     counted('patients a day are sent home unserved'),
     2,
   ),
+  cannotTakePerDay: measure(
+    'Cannot be taken here',
+    'a day',
+    'less',
+    'Asked for, and no scanner of the scenario has the coil or can answer anything: never on the list.',
+    counted('requests a day cannot be taken here'),
+  ),
   noShowsPerDay: measure(
     'Did not come',
     'a day',

@@ -27,6 +27,8 @@ export interface MonthRecord {
   readonly cutShortShare: number;
   /** Came and were sent home because the day was over, a day. */
   readonly sentHomePerDay: number;
+  /** Asked for, and no scanner of the scenario can take it, a day. */
+  readonly cannotTakePerDay: number;
   readonly noShowsPerDay: number;
   /** Days from the request to the exam, emergencies not counted. */
   readonly daysWaitedMedian: number;
@@ -52,10 +54,11 @@ export class MonthCount {
   brokenOff = 0;
   cutShort = 0;
   sentHome = 0;
+  cannotTake = 0;
   noShows = 0;
-  readonly waits = new Histogram(600);
-  readonly emergencyWaits = new Histogram(600);
-  readonly daysWaited = new Histogram(2000);
+  readonly waits = new WaitCounts(600);
+  readonly emergencyWaits = new WaitCounts(600);
+  readonly daysWaited = new DayCounts();
 
   record(days: number, scanners: number, listAtEnd: number): MonthRecord {
     const share = (count: number) => (this.patients === 0 ? 0 : count / this.patients);
@@ -74,6 +77,7 @@ export class MonthCount {
       brokenOffShare: share(this.brokenOff),
       cutShortShare: share(this.cutShort),
       sentHomePerDay: this.sentHome / days,
+      cannotTakePerDay: this.cannotTake / days,
       noShowsPerDay: this.noShows / days,
       daysWaitedMedian: this.daysWaited.quantile(0.5),
       listAtEnd,
@@ -82,31 +86,54 @@ export class MonthCount {
   }
 }
 
-/** Counts by whole units, the last one open above. */
-class Histogram {
+const cellsPerMinute = 10;
+
+/** Waits in tenths of a minute; those of 0 in a cell of their own, for most wait not at all. The last cell is open above. */
+class WaitCounts {
   private readonly counts: Int32Array;
   private total = 0;
 
-  constructor(longest: number) {
-    this.counts = new Int32Array(longest + 1);
+  constructor(longestMin: number) {
+    this.counts = new Int32Array(2 + longestMin * cellsPerMinute);
   }
 
-  add(value: number): void {
-    const at = Math.min(this.counts.length - 1, Math.max(0, Math.floor(value)));
-    this.counts[at]! += 1;
+  add(waitMin: number): void {
+    const cell = waitMin <= 0 ? 0 : 1 + Math.floor(waitMin * cellsPerMinute);
+    this.counts[Math.min(cell, this.counts.length - 1)]! += 1;
     this.total += 1;
   }
 
-  /** Within a unit the counts are taken as evenly spread; 0 with nothing counted. */
+  /** NaN with nothing counted: a month without such patients says nothing of them. */
   quantile(p: number): number {
-    if (this.total === 0) return 0;
-    const wanted = p * this.total;
-    let below = 0;
-    for (let at = 0; at < this.counts.length; at++) {
-      const here = this.counts[at]!;
-      if (below + here >= wanted) return here === 0 ? at : at + (wanted - below) / here;
-      below += here;
-    }
-    return this.counts.length - 1;
+    const { cell, share } = cellOf(this.counts, p, this.total);
+    return cell === 0 ? 0 : (cell - 1 + share) / cellsPerMinute;
   }
+}
+
+/** Whole days. */
+class DayCounts {
+  private readonly counts = new Int32Array(2000);
+  private total = 0;
+
+  add(days: number): void {
+    this.counts[Math.min(this.counts.length - 1, Math.max(0, days))]! += 1;
+    this.total += 1;
+  }
+
+  quantile(p: number): number {
+    return cellOf(this.counts, p, this.total).cell;
+  }
+}
+
+/** The first cell up to which a share p of all lie, and how far into it, 0..1; NaN with nothing counted. */
+function cellOf(counts: Int32Array, p: number, total: number) {
+  if (total === 0) return { cell: Number.NaN, share: 0 };
+  const wanted = p * total;
+  let below = 0;
+  for (let cell = 0; cell < counts.length; cell++) {
+    const here = counts[cell]!;
+    if (here > 0 && below + here >= wanted) return { cell, share: (wanted - below) / here };
+    below += here;
+  }
+  return { cell: counts.length - 1, share: 1 };
 }

@@ -45,7 +45,7 @@ export function simulateMonth(department: SimDepartment, month: number): MonthRe
   if (booked.any) {
     for (let i = 0; i < listAtStart; i++) {
       const ago = requestsPerDay > 0 ? (listAtStart - i) / requestsPerDay : 1;
-      list.push(booked.next(-Math.ceil(ago)));
+      take(booked.next(-Math.ceil(ago)), false);
     }
   }
   for (let day = 0; day < daysAMonth; day++) {
@@ -54,22 +54,30 @@ export function simulateMonth(department: SimDepartment, month: number): MonthRe
       list.push(owed[i]!.patient);
       owed.splice(i, 1);
     }
-    const coming = bookDay(list, department).flatMap((a) => attend(a, day));
+    const coming = bookDay(list, department).flatMap(attend);
     comeUnbooked(coming);
     serve(coming, day);
     const asked = booked.any ? poisson(arrivals(), requestsPerDay) : 0;
-    for (let i = 0; i < asked; i++) list.push(booked.next(day));
+    for (let i = 0; i < asked; i++) take(booked.next(day), true);
     for (const { open } of scanners) for (const [from, to] of open) count.openMin += to - from;
   }
   return count.record(daysAMonth, Math.max(1, scanners.length), list.length + owed.length);
 
+  /** Onto the list, unless no scanner can take it. */
+  function take(patient: Patient, counted: boolean): void {
+    const { places } = department.kinds[patient.kind]!;
+    if (places.some((place) => place !== undefined)) list.push(patient);
+    else if (counted) count.cannotTake += 1;
+  }
+
   /** Who comes to an appointment, and when; who does not come asks again. */
-  function attend(appointment: Appointment, day: number): Coming[] {
+  function attend(appointment: Appointment): Coming[] {
     const { patient, startMin, scanner } = appointment;
     const { draws, kind } = patient;
     if (draws[drawAt.noShow]! < department.noShowShare) {
       count.noShows += 1;
-      if (patient.followUp < mostVisits) list.push(followUps.again(patient, day));
+      if (patient.missed < mostMissed)
+        list.push(followUps.again(patient, { missed: patient.missed + 1 }));
       return [];
     }
     const late = draws[drawAt.late]! < department.lateShare;
@@ -94,6 +102,10 @@ export function simulateMonth(department: SimDepartment, month: number): MonthRe
         (bits, place, s) => (place === undefined ? bits : bits | (1 << s)),
         0,
       );
+      if (able === 0) {
+        count.cannotTake += 1;
+        continue;
+      }
       const visit: Visit = {
         readyMin,
         scanner: -1,
@@ -128,13 +140,14 @@ export function simulateMonth(department: SimDepartment, month: number): MonthRe
       rules,
       (n, s) => minutesOf(coming[n]!, s, day),
     );
+    const lastEnd = new Float64Array(scanners.length);
     coming.forEach(({ patient, appointment }, n) => {
       const s = served.scanner[n]!;
       if (s < 0) {
         if (patient === undefined) return;
         count.sentHome += 1;
         // An emergency that the day has no room for is taken over by others on call: not this department's list.
-        if (appointment !== undefined) list.push(patient);
+        if (appointment !== undefined) list.unshift(followUps.again(patient));
         return;
       }
       const startMin = served.startMin[n]!;
@@ -143,7 +156,7 @@ export function simulateMonth(department: SimDepartment, month: number): MonthRe
       const { open } = scanners[s]!;
       for (const [from, to] of open)
         count.busyMin += Math.max(0, Math.min(endMin, to) - Math.max(startMin, from));
-      count.overtimeMin += Math.max(0, endMin - Math.max(startMin, open.at(-1)![1]));
+      lastEnd[s] = Math.max(lastEnd[s]!, endMin);
       const { readyMin } = coming[n]!.visit;
       if (appointment === undefined) count.emergencyWaits.add(startMin - readyMin);
       else {
@@ -151,6 +164,9 @@ export function simulateMonth(department: SimDepartment, month: number): MonthRe
         count.booked += 1;
         if (patient.followUp === 0) count.daysWaited.add(day - patient.askedDay);
       }
+    });
+    scanners.forEach(({ open }, s) => {
+      count.overtimeMin += Math.max(0, lastEnd[s]! - (open.at(-1)?.[1] ?? Infinity));
     });
   }
 
@@ -206,10 +222,13 @@ export function simulateMonth(department: SimDepartment, month: number): MonthRe
     if (!comesBack || patient.followUp >= mostVisits) return;
     count.followUps += 1;
     const due = day + department.followUpAfterDays;
-    owed.push({ day: due, patient: followUps.again(patient, due) });
+    const followUp = patient.followUp + 1;
+    owed.push({ day: due, patient: followUps.again(patient, { askedDay: due, followUp }) });
   }
 }
 
+/** Who does not come a third time is not booked again. Ours, an assumption. */
+const mostMissed = 2;
 /** After two further visits the clinicians take another way. Ours, an assumption. */
 const mostVisits = 2;
 

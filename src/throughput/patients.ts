@@ -9,6 +9,8 @@ export interface Patient {
   readonly askedDay: number;
   /** Visits that count as follow-ups of the first. */
   readonly followUp: number;
+  /** Times booked and not come. */
+  readonly missed: number;
   /** Bit per question that has its diagnostic answer. */
   answered: number;
   /** Uniform numbers: attendance first, then the exam. */
@@ -63,17 +65,19 @@ export class PatientSource {
   }
 
   next(askedDay: number): Patient {
-    return this.patient(this.drawKind(this.who()), askedDay, 0);
+    return this.patient(this.drawKind(this.who()), askedDay);
   }
 
-  /** The same patient once more, with luck of another day. */
-  again(before: Patient, askedDay: number): Patient {
-    const patient = this.patient(before.kind, askedDay, before.followUp + 1);
-    patient.answered = before.answered;
-    return patient;
+  /** The same patient once more, with luck of another day; what is not given stays as it was. */
+  again(
+    before: Patient,
+    change: Partial<Pick<Patient, 'askedDay' | 'followUp' | 'missed'>> = {},
+  ): Patient {
+    const { kind, askedDay, followUp, missed, answered } = { ...before, ...change };
+    return { ...this.patient(kind, askedDay), followUp, missed, answered };
   }
 
-  private patient(kind: number, askedDay: number, followUp: number): Patient {
+  private patient(kind: number, askedDay: number): Patient {
     const draws = new Float64Array(drawAt.exam + drawsPerExam);
     for (let i = 0; i < 3; i++) draws[i] = this.attendance();
     for (let i = 3; i < 6; i++) draws[i] = this.delays();
@@ -82,7 +86,7 @@ export class PatientSource {
     draws[drawAt.exam + 1] = this.table();
     draws[drawAt.exam + 2] = this.patience();
     for (let i = drawAt.exam + 3; i < draws.length; i++) draws[i] = this.movement();
-    return { kind, askedDay, followUp, answered: 0, draws };
+    return { kind, askedDay, followUp: 0, missed: 0, answered: 0, draws };
   }
 
   private drawKind(u: number): number {

@@ -44,9 +44,9 @@ export const scenarioPriors: Readonly<Record<PriorField, Sourced<number>>> = {
   },
   cannulaShare: {
     value: 0.056,
-    basis: 'published',
+    basis: 'assumption',
     source:
-      'Cannula or port delays in 5.57 % of exams, Beker, AJR 2017; here of exams with contrast',
+      'Cannula or port delays in 5.57 % of all exams (Beker, AJR 2017); taken here of exams with contrast only, so fewer in all',
   },
   cannulaMeanMin: {
     value: 22.8,
@@ -55,9 +55,9 @@ export const scenarioPriors: Readonly<Record<PriorField, Sourced<number>>> = {
   },
   downShare: {
     value: 0.015,
-    basis: 'published',
+    basis: 'assumption',
     source:
-      'Technical events in 1.5 % of exams, Sadigh, JACR 2017; here as the chance a scanner and day',
+      'Technical events befell 1.5 % of exams (Sadigh, JACR 2017), most of them small; that a whole scanner stands still is taken as rarer, 1.5 % of its days',
   },
   downMeanMin: {
     value: 60,
@@ -73,7 +73,7 @@ export const scenarioPriors: Readonly<Record<PriorField, Sourced<number>>> = {
     value: 0.6,
     basis: 'assumption',
     source:
-      'Answers owed that are not signed off by a clinician come back; the share was not found published',
+      'Answers owed that are not signed off by a clinician come back; the share was not found published (recall of outpatients for any reason was 0.059 %, AJR 2016;206:787, which counts another thing)',
   },
   followUpAfterDays: {
     value: 5,

@@ -8,7 +8,7 @@ import type { SimDepartment, SimKind, SimPlace, SimScanner } from './sim-departm
 
 export interface WorkedOut {
   readonly department: SimDepartment;
-  /** Requests on record that no scanner of the scenario can take, by exam and coil: they are left out. */
+  /** Requests on record that no scanner of the scenario can take, by exam and coil: they come, are counted and not listed. */
   readonly leftOut: readonly string[];
   /** Kinds of request that were planned, and how many stand on record. */
   readonly kinds: KindsUsed;
@@ -34,7 +34,6 @@ export function* workOut(
     const places = scenario.scanners.map((scanner) => placeOn(kind, scanner));
     if (places.every((p) => p === undefined)) {
       leftOut.add(`${exam?.name ?? request.examId} (coil: ${exam?.coil ?? 'unknown'})`);
-      continue;
     }
     worked.push({
       weight,

@@ -31,7 +31,10 @@ export async function achievedOf(
   });
 }
 
-/** Start of the slot, or the arrival where that was later, s on the exam's clock; unknown where the clock was not the slot's. */
+/**
+ * Start of the slot, or the arrival where that was later, s on the exam's clock. Unknown where the clock was not the slot's, and
+ * where the exam before it on the scanner was still running then: waiting for the scanner is not getting in.
+ */
 async function entryFromS(
   { store, department }: Pick<PageDeps, 'store' | 'department'>,
   booking: StoredBooking,
@@ -39,7 +42,26 @@ async function entryFromS(
   const slotMs = instantOf(booking.date, booking.startMin, department.zone);
   const zeroMs = await store.consoleLog.zeroMs(booking.id);
   if (zeroMs === undefined || !isBySlot(zeroMs, slotMs)) return undefined;
+  if (await scannerWasTaken(store, booking, slotMs)) return undefined;
   const changes = await store.history.of('booking', booking.id);
   const arrivedMs = changes.findLast((c) => c.action === 'arrived')?.atMs ?? slotMs;
   return Math.max(0, (arrivedMs - slotMs) / 1000);
+}
+
+/** Whether an earlier exam of the day, by its own taps, was on the scanner when this one's slot began. */
+async function scannerWasTaken(
+  store: PageDeps['store'],
+  { id, scannerId, date, startMin }: StoredBooking,
+  slotMs: number,
+): Promise<boolean> {
+  const day = await store.bookings.listDay(date);
+  const earlier = day.filter(
+    (b) => b.scannerId === scannerId && b.startMin < startMin && b.id !== id,
+  );
+  const before = earlier.sort((a, b) => b.startMin - a.startMin)[0];
+  if (before === undefined) return false;
+  const zeroMs = await store.consoleLog.zeroMs(before.id);
+  if (zeroMs === undefined) return false;
+  const ended = (await store.consoleLog.list(before.id)).findLast((e) => e.kind === 'ended');
+  return ended === undefined || zeroMs + ended.atS * 1000 > slotMs;
 }

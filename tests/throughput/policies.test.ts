@@ -1,6 +1,7 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { bookDay } from '../../src/throughput/appointments.js';
 import { meanWithLimits, simulateMonth, type SimDepartment } from '../../src/throughput/index.js';
+import { MonthCount } from '../../src/throughput/month-record.js';
 import { PatientSource, type Patient } from '../../src/throughput/patients.js';
 import { usual, worked } from './ground.js';
 
@@ -125,11 +126,42 @@ describe('what a policy does', () => {
     expect(month!.listAtEnd).toBe(0);
   });
 
-  it('with quick looks the same patients give up no less often, but fewer leave with nothing', () => {
+  it('with quick looks more of the same patients leave with something seen and nothing diagnostic', () => {
     const quick = worked({ ...usual, content: 'planned', quickLooks: true }).department;
     const strict = worked({ ...usual, content: 'planned' }).department;
     const mean = (d: SimDepartment) =>
       meanWithLimits(months(d, 4).map((m) => m.quickLookOnlyShare)).mean;
     expect(mean(quick)).toBeGreaterThan(mean(strict));
+  });
+});
+
+describe('what is counted', () => {
+  it('waits of nothing are 0, not a part of a minute; whole days are whole', () => {
+    const count = new MonthCount();
+    for (let i = 0; i < 9; i++) count.waits.add(0);
+    count.waits.add(30);
+    for (let i = 0; i < 10; i++) count.daysWaited.add(5);
+    const month = count.record(1, 1, 0);
+    expect(month.waitMedianMin).toBe(0);
+    expect(month.waitNinetiethMin).toBe(0);
+    expect(month.daysWaitedMedian).toBe(5);
+    // Nobody came as an emergency: the month says nothing of their wait.
+    expect(month.emergencyWaitMedianMin).toBeNaN();
+  });
+
+  it('what no scanner can take is asked for all the same, counted, and replaced by nothing easier', () => {
+    const { department } = worked(usual);
+    const knees = department.kinds.map((k, n) => (n % 5 === 0 && !k.emergency ? n : -1));
+    const without: SimDepartment = {
+      ...department,
+      kinds: department.kinds.map((k, n) =>
+        knees.includes(n) ? { ...k, places: k.places.map(() => undefined) } : k,
+      ),
+    };
+    const few = (d: SimDepartment) => ({ ...d, requestsPerDay: 20, listAtStart: 20, downShare: 0 });
+    const [before, after] = [simulateMonth(few(department), 0), simulateMonth(few(without), 0)];
+    expect(after.cannotTakePerDay).toBeGreaterThan(1);
+    expect(before.cannotTakePerDay).toBe(0);
+    expect(after.patientsPerDay).toBeLessThan(before.patientsPerDay);
   });
 });

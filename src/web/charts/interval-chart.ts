@@ -34,8 +34,10 @@ export function intervalChart(chart: IntervalChart): string {
   const bottom = 6 + rows.length * rowHeight;
   const lines = rows.map((row, n) => {
     const y = 6 + n * rowHeight + 28;
-    const [low, high] = [row.low, row.high].map((v) => r(x(Number.isFinite(v) ? v : row.value)));
-    const at = r(x(row.value));
+    const [low, high] = [row.low, row.high].map((v) =>
+      r(x([v, row.value, 0].find(Number.isFinite)!)),
+    );
+    const at = r(x(Number.isFinite(row.value) ? row.value : 0));
     return [
       `<text x="${left}" y="${y - 14}">${escaped(shortened(row.name))}</text>`,
       `<line x1="${left}" x2="${at}" y1="${y}" y2="${y}" stroke="currentColor" stroke-width="1" opacity="0.35"/>`,
