@@ -1,5 +1,5 @@
 import { join } from 'node:path';
-import { demoFolder } from '../../src/cli/files.js';
+import { projectFolder } from '../../src/cli/files.js';
 import { openDepartment, openGround } from '../../src/cli/ground.js';
 import { seedScenarios } from '../../src/web/seed-scenarios.js';
 import { openSite, type Site } from '../browser/harness.js';
@@ -12,7 +12,7 @@ export interface Progress {
   readonly percent: number;
 }
 
-/** The demo department with the demo's scenarios kept, and what a browser does on the month's pages. */
+/** The demo department with five scenarios kept, and what a browser does on the month's pages. */
 export interface MonthSite extends Site {
   readonly post: (path: string, fields: Fields) => Promise<Response>;
   readonly page: (path: string) => Promise<string>;
@@ -24,7 +24,7 @@ export interface MonthSite extends Site {
 
 export async function openMonth(options: Parameters<typeof openSite>[0] = {}): Promise<MonthSite> {
   const site = await openSite(options);
-  await seedScenarios(join(demoFolder, 'scenarios.yaml'), {
+  await seedScenarios(join(projectFolder, 'tests/web/month-scenarios.yaml'), {
     store: site.store,
     ground: openGround().ground,
     department: openDepartment(),
