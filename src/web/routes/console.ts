@@ -1,12 +1,17 @@
 import { randomUUID } from 'node:crypto';
 import { Router, type Request } from 'express';
 import { z } from 'zod';
-import type { ConsoleExam, ConsoleHappening } from '../../console/index.js';
+import { foldEvents, type ConsoleHappening } from '../../console/index.js';
 import { parseDurationS } from '../../interchange/index.js';
-import { examOf } from '../../planning/index.js';
 import { ProblemError } from '../../shared/index.js';
-import { happeningSchema, type StoredBooking, type Tap } from '../../store/index.js';
+import {
+  happeningSchema,
+  type BookingStatus,
+  type StoredBooking,
+  type Tap,
+} from '../../store/index.js';
 import { gone } from '../board-fields.js';
+import { consoleExamOf } from '../console-exam.js';
 import type { PageDeps } from '../deps.js';
 import { isBySlot } from '../exam-clock.js';
 import { instantOf } from '../site-time.js';
@@ -36,14 +41,7 @@ export function consoleRoutes(deps: PageDeps): Router {
     const scanner = deps.department.scanners.find((s) => s.id === booking?.scannerId);
     if (booking === undefined || stored === undefined || scanner === undefined)
       throw gone('booking', id);
-    const found = examOf(stored.body, deps.ground.library);
-    if (found.kind === 'refused') throw new ProblemError(found.problems[0]!);
-    const exam: ConsoleExam = {
-      request: stored.body,
-      ...found.value,
-      scanner,
-      ground: deps.ground,
-    };
+    const exam = consoleExamOf(deps, stored.body, scanner);
     return { booking, exam, zeroMs: await zeroOf(booking) };
   }
 
@@ -67,7 +65,7 @@ export function consoleRoutes(deps: PageDeps): Router {
       zeroMs,
       slotS,
       page,
-      over: booking.status === 'fulfilled',
+      over: overWords[booking.status],
     };
   }
 
@@ -102,10 +100,12 @@ export function consoleRoutes(deps: PageDeps): Router {
   router.post('/console/:id', async (request, response) => {
     const id = String(request.params.id);
     const form = request.body as Record<string, string>;
-    const { zeroMs } = await opened(id);
+    const { zeroMs, exam } = await opened(id);
     const atS = (deps.now() - zeroMs) / 1000;
+    const { running } = foldEvents(await deps.store.consoleLog.list(id), exam.request.tolerance);
+    const ranS = Math.max(0, atS - (running?.sinceS ?? atS));
     const tapId = /^[\w-]{8,64}$/.test(form['tap_id'] ?? '') ? form['tap_id']! : randomUUID();
-    await keep(id, [{ tapId, atS, happening: readHappening(form) }], request);
+    await keep(id, [{ tapId, atS, happening: readHappening(form, ranS) }], request);
     response.redirect(303, `/console/${encodeURIComponent(id)}`);
   });
 
@@ -124,8 +124,21 @@ export function consoleRoutes(deps: PageDeps): Router {
   return router;
 }
 
-/** A tap from form fields; spans are written as "30 s" or "2 min". */
-function readHappening(form: Readonly<Record<string, string>>): ConsoleHappening {
+/** Why nothing can be tapped for a booking that is not, or no longer, to be scanned. */
+const overWords: Readonly<Partial<Record<BookingStatus, string>>> = {
+  fulfilled: 'This exam is done and recorded.',
+  cancelled: 'This booking was taken off the board; nothing is tapped for it any more.',
+  noshow: 'This patient did not come; nothing is tapped for this booking any more.',
+};
+
+/** The longest time into a sequence that a failed hold is told at, s; the log's own limit. */
+const longestAfterS = 300;
+
+/**
+ * A tap from form fields; spans are written as "30 s" or "2 min". A plain form cannot count: a failed hold is dated by
+ * the seconds that the sequence has been running.
+ */
+function readHappening(form: Readonly<Record<string, string>>, ranS: number): ConsoleHappening {
   const { kind } = form;
   const span = (field: string) => {
     const text = form[field];
@@ -139,7 +152,7 @@ function readHappening(form: Readonly<Record<string, string>>): ConsoleHappening
       : kind === 'put first' || kind === 'dropped'
         ? { kind, viewId: form['view'] }
         : kind === 'hold failed'
-          ? { kind, afterS: Number(form['after']) }
+          ? { kind, afterS: Math.min(longestAfterS, ranS) }
           : kind === 'undone'
             ? { kind, taken: Number(form['taken']) }
             : kind === 'statement'
