@@ -4,6 +4,7 @@ export * from './gaps.js';
 export * from './fits.js';
 export * from './offers.js';
 export {
+  stepMin,
   priorityWorth,
   type FillProblem,
   type TakenPlace,

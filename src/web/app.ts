@@ -28,6 +28,7 @@ import { requestRoutes } from './routes/requests.js';
 import { slotAdviceRoutes } from './routes/slot-advice.js';
 import { whoRoutes } from './routes/who.js';
 import { sameOriginOnly } from './same-origin.js';
+import { nameNewDesk } from './who.js';
 
 /** The pages as one application; it listens nowhere by itself. */
 export function createApp(given: WebDeps): Express {
@@ -61,6 +62,7 @@ export function createApp(given: WebDeps): Express {
   app.use(
     rateLimit({ windowMs: 60_000, limit: 1200, standardHeaders: true, legacyHeaders: false }),
   );
+  app.use(nameNewDesk);
   app.use(pageLocals(deps));
   app.use(sameOriginOnly);
   app.use(express.json({ limit: '64kb' }));

@@ -3,6 +3,7 @@ import { clock } from '../day/index.js';
 import type { StoredBooking } from '../store/index.js';
 import { gone, readGap } from './board-fields.js';
 import type { PageDeps } from './deps.js';
+import { notBefore, siteNow } from './past-places.js';
 import { dayFrom, isDay } from './site-time.js';
 import { takeTold, type Told } from './told.js';
 import { dayBoard } from './view-models/day-board.js';
@@ -35,7 +36,7 @@ export function boardPage(deps: PageDeps) {
       typeof request.query['booking'] === 'string'
         ? bookings.find((b) => b.id === request.query['booking'])
         : undefined;
-    const gap = readGap(request.query['gap'], deps.department.scanners);
+    const gap = ahead(date, readGap(request.query['gap'], deps.department.scanners));
     const waiting = [...requests.values()].filter((r) => r.status === 'waiting');
     const offers =
       gap === undefined ? undefined : await gapOffers({ ...gap, date, waiting, planner, examName });
@@ -62,6 +63,14 @@ export function boardPage(deps: PageDeps) {
             ),
       message: message ?? takeTold(request, response),
     });
+  }
+
+  /** A gap of today, as far as it has not gone by; one that is over stays whole, for what is written down afterwards. */
+  function ahead(date: string, open: ReturnType<typeof readGap>): ReturnType<typeof readGap> {
+    const now = siteNow(deps);
+    if (open === undefined || date !== now.date) return open;
+    const fromMin = notBefore(open.gap.fromMin, now.minute);
+    return fromMin >= open.gap.toMin ? open : { ...open, gap: { ...open.gap, fromMin } };
   }
 
   return { data, show };

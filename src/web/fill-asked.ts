@@ -14,7 +14,7 @@ export function daysAsked(
   const last =
     typeof until === 'string' && isDay(until) && until >= first
       ? until
-      : (own[own.length - 1] ?? first);
+      : (own[own.length - 1] ?? dayFrom(first, 6));
   const days = Array.from({ length: 14 }, (_, n) => dayFrom(first, n));
   return days.filter((d) => d <= last || d === first);
 }

@@ -6,6 +6,7 @@ import {
   type FillProposal,
 } from '../day/index.js';
 import type { PageDeps } from './deps.js';
+import { pastPlaces } from './past-places.js';
 import { breath, takenPlaces, withOffers } from './waiting-requests.js';
 
 /** Search budget of a proposal made while somebody waits for the page. */
@@ -31,7 +32,10 @@ export async function fillProblem(
   }
   return {
     department: { ...department, days },
-    taken: takenPlaces(deps, bookings, new Map(all.map((r) => [r.id, r]))),
+    taken: [
+      ...pastPlaces(deps, days),
+      ...takenPlaces(deps, bookings, new Map(all.map((r) => [r.id, r]))),
+    ],
     waiting,
   };
 }

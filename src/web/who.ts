@@ -1,4 +1,5 @@
-import type { Request, Response } from 'express';
+import { randomInt } from 'node:crypto';
+import type { Request, RequestHandler, Response } from 'express';
 
 const cookieName = 'stillspan_who';
 const longestName = 40;
@@ -17,6 +18,22 @@ export function whoIs(request: Request): string {
   }
   return 'desk';
 }
+
+/**
+ * Gives a browser without a name one of its own when it first opens a page: with one name for all, "undo my last change"
+ * would take back another desk's.
+ */
+export const nameNewDesk: RequestHandler = (request, response, next) => {
+  const cookie = request.headers.cookie ?? '';
+  const opensPage = request.method === 'GET' && (request.get('accept') ?? '').includes('text/html');
+  if (opensPage && !cookie.includes(`${cookieName}=`)) {
+    const name = `desk ${randomInt(1000, 10_000)}`;
+    rememberWho(response, name);
+    const own = `${cookieName}=${encodeURIComponent(name)}`;
+    request.headers.cookie = cookie === '' ? own : `${cookie}; ${own}`;
+  }
+  next();
+};
 
 export function rememberWho(response: Response, name: string): void {
   response.cookie(cookieName, cleaned(name), {

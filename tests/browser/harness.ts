@@ -31,8 +31,14 @@ export interface Site {
 
 /** The whole application over a database in memory, filled with the demo department, on a free port of this machine. */
 export async function openSite(
-  options: { readonly file?: string; readonly seed?: boolean; readonly port?: number } = {},
+  options: {
+    readonly file?: string;
+    readonly seed?: boolean;
+    readonly port?: number;
+    readonly now?: () => number;
+  } = {},
 ): Promise<Site> {
+  const now = options.now ?? (() => Date.now());
   const client = mkdtempSync(join(tmpdir(), 'stillspan-client-'));
   await build({
     entryPoints: readdirSync(join(projectFolder, 'src/web/client')).map((name) =>
@@ -53,7 +59,7 @@ export async function openSite(
       ground,
       department,
       solver,
-      now: () => Date.now(),
+      now,
     });
   }
   const app = createApp({
@@ -61,7 +67,7 @@ export async function openSite(
     ground,
     department,
     solver,
-    now: () => Date.now(),
+    now,
     folders: {
       views: join(projectFolder, 'views'),
       assets: join(projectFolder, 'src/web/assets'),

@@ -1,11 +1,11 @@
 import { Router, type Request, type Response } from 'express';
 import { clock, type Scanner } from '../../day/index.js';
 import { ProblemError } from '../../shared/index.js';
-import type { PlacingOutcome } from '../../store/index.js';
+import type { PlacingOutcome, StoredBooking } from '../../store/index.js';
 import { gone, readClock, readSlotMin, refuseOutsideHours } from '../board-fields.js';
 import { boardPage } from '../board-page.js';
 import type { PageDeps } from '../deps.js';
-import { placeRequest } from '../place-request.js';
+import { placeRequest, type WantedPlace } from '../place-request.js';
 import { summaryOf } from '../planner.js';
 import { isDay } from '../site-time.js';
 import { tell } from '../told.js';
@@ -29,6 +29,9 @@ export function bookingRoutes(deps: PageDeps): Router {
     const startMin = readClock(form['start'] ?? '');
     const place = { scanner, date, startMin, slotMin };
     const placed = await placeRequest(deps, stored, place, whoIs(request));
+    const held =
+      placed.kind === 'stale' ? await deps.store.bookings.ofRequest(stored.id) : undefined;
+    if (held !== undefined) return answerHeld(response, held, place);
     await answer(
       request,
       response,
@@ -93,10 +96,29 @@ export function bookingRoutes(deps: PageDeps): Router {
     const form = request.body as Record<string, string>;
     const date = isDay(form['date'] ?? '') ? form['date']! : (deps.department.days[0] ?? '');
     const undone = await deps.store.history.undoLast(whoIs(request), deps.now());
-    const text = undone.kind === 'undone' ? `Undone: ${undone.what}.` : undone.why;
+    const text =
+      undone.kind === 'undone' ? `Undone: ${undone.what}.` : `Not undone: ${undone.why}.`;
     tell(response, undone.kind === 'undone' ? 'told' : 'refused', text);
     response.redirect(303, `/day/${date}`);
   });
+
+  /** A request that has its place by now: perhaps by this very form, sent twice or come back to. */
+  function answerHeld(response: Response, held: StoredBooking, wanted: WantedPlace) {
+    const same =
+      held.scannerId === wanted.scanner.id &&
+      held.date === wanted.date &&
+      held.startMin === wanted.startMin;
+    const name = deps.department.scanners.find((s) => s.id === held.scannerId)?.name;
+    const at = `${clock(held.startMin)} on ${name ?? held.scannerId}`;
+    tell(
+      response,
+      same ? 'told' : 'refused',
+      same
+        ? `${held.requestId} is placed at ${at}.`
+        : `Not placed again: ${held.requestId} already has its place, ${held.date} ${at}. Nothing was changed.`,
+    );
+    response.redirect(303, `/day/${held.date}?booking=${encodeURIComponent(held.id)}`);
+  }
 
   async function answer(
     request: Request,

@@ -1,5 +1,6 @@
 import { Router } from 'express';
 import type { PageDeps } from '../deps.js';
+import { siteNow } from '../past-places.js';
 import { siteDate, workingDays } from '../site-time.js';
 import { bestPlaces } from '../view-models/best-places.js';
 
@@ -31,6 +32,7 @@ export function placesRoutes(deps: PageDeps): Router {
         days,
         bookings,
         planner: deps.planner,
+        now: siteNow(deps),
       }),
     });
   });

@@ -2,6 +2,7 @@ import { canComeAt, clock, freeGaps, type Department } from '../../day/index.js'
 import { rankOf } from '../../exams/index.js';
 import type { Plan } from '../../planning/index.js';
 import type { StoredBooking, StoredRequest } from '../../store/index.js';
+import { notBefore } from '../past-places.js';
 import type { Planner } from '../planner.js';
 import { chanceWords } from './day-board.js';
 
@@ -29,8 +30,10 @@ export async function bestPlaces(input: {
   readonly days: readonly string[];
   readonly bookings: readonly StoredBooking[];
   readonly planner: Planner;
+  /** The site's date and minute: nothing before it is offered. */
+  readonly now: { readonly date: string; readonly minute: number };
 }): Promise<readonly PlaceOffer[]> {
-  const { stored, department, days, bookings, planner } = input;
+  const { stored, department, days, bookings, planner, now } = input;
   const { body } = stored;
   const slotMin = Math.ceil(body.slotS / 60);
   const offers: (PlaceOffer & { readonly worth: number })[] = [];
@@ -42,7 +45,8 @@ export async function bestPlaces(input: {
     for (const date of days) {
       const own = bookings.filter((b) => b.scannerId === scanner.id && b.date === date);
       for (const gap of freeGaps(scanner, own)) {
-        const fit = canComeAt(body.canCome, date, gap, slotMin);
+        const fromMin = date === now.date ? notBefore(gap.fromMin, now.minute) : gap.fromMin;
+        const fit = canComeAt(body.canCome, date, { ...gap, fromMin }, slotMin);
         if ('why' in fit) continue;
         offers.push({
           scannerId: scanner.id,
