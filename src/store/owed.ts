@@ -1,3 +1,4 @@
+import type { Grade } from '../exams/index.js';
 import type { Database } from './database.js';
 import { inTransaction, looking, type Tx } from './in-transaction.js';
 import { refused, stale, type Refused, type Stale } from './outcomes.js';
@@ -8,6 +9,12 @@ import { owedFrom, type StoredOwed } from './stored.js';
 import type { OwedState } from './tables.js';
 
 export type OwedOutcome = { readonly kind: 'changed'; readonly owed: StoredOwed } | Stale | Refused;
+
+/** A statement takes only so many values at once. */
+const askedAtOnce = 500;
+
+/** Grades on record by question. */
+export type RecordedGrades = ReadonlyMap<string, Grade>;
 
 /** Answers owed. Nothing is deleted, and nothing is closed but by a diagnostic answer or a signature. */
 export function owedIn(database: Database) {
@@ -44,6 +51,24 @@ export function owedIn(database: Database) {
         let query = db.selectFrom('owed').selectAll();
         if (states !== undefined) query = query.where('state', 'in', states);
         return (await query.orderBy('due_date').orderBy('id').execute()).map(owedFrom);
+      }),
+
+    /** What went on record for some requests, by request and question; requests without a record are not in it. */
+    recorded: (requestIds: readonly string[]): Promise<ReadonlyMap<string, RecordedGrades>> =>
+      looking(database, async (db) => {
+        const found = new Map<string, Map<string, Grade>>();
+        for (let at = 0; at < requestIds.length; at += askedAtOnce) {
+          const rows = await db
+            .selectFrom('done_answer')
+            .select(['request_id', 'question_id', 'grade'])
+            .where('request_id', 'in', requestIds.slice(at, at + askedAtOnce))
+            .execute();
+          for (const row of rows) {
+            const grades = found.get(row.request_id) ?? new Map<string, Grade>();
+            found.set(row.request_id, grades.set(row.question_id, row.grade));
+          }
+        }
+        return found;
       }),
 
     get: (id: string): Promise<StoredOwed | undefined> =>

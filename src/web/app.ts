@@ -10,6 +10,7 @@ import { Planner } from './planner.js';
 import { boardRoutes } from './routes/board.js';
 import { bookingRoutes } from './routes/bookings.js';
 import { consoleRoutes } from './routes/console.js';
+import { doneRoutes } from './routes/done.js';
 import { fillSearchRoutes } from './routes/fill-search.js';
 import { fillRoutes } from './routes/fill.js';
 import { learningRoutes } from './routes/learning.js';
@@ -82,6 +83,7 @@ export function createApp(given: WebDeps): Express {
   app.use(monthScenarioRoutes(deps));
   app.use(monthRoutes(deps, runs));
   app.use(owedRoutes(deps));
+  app.use(doneRoutes(deps));
   app.use(consoleRoutes(deps));
   app.use(learningRoutes(deps));
   app.use(libraryRoutes(deps));

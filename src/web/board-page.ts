@@ -4,6 +4,7 @@ import type { StoredBooking } from '../store/index.js';
 import { gone, readGap } from './board-fields.js';
 import type { PageDeps } from './deps.js';
 import { notBefore, siteNow } from './past-places.js';
+import { recordedAnswers } from './recorded-answers.js';
 import { dayFrom, isDay } from './site-time.js';
 import { takeTold, type Told } from './told.js';
 import { dayBoard } from './view-models/day-board.js';
@@ -17,12 +18,14 @@ export function boardPage(deps: PageDeps) {
   async function data(date: string) {
     const bookings = await deps.store.bookings.listDay(date);
     const requests = new Map((await deps.store.requests.list()).map((r) => [r.id, r]));
+    const today = bookings.flatMap((b) => requests.get(b.requestId) ?? []);
     const board = dayBoard({
       date,
       department: deps.department,
       bookings,
       requests,
       examName,
+      recorded: await recordedAnswers(deps, today),
       wishedChance: deps.ground.library.policy.time.finishConfidence.value,
     });
     return { board, bookings, requests };

@@ -176,7 +176,7 @@ describe.skipIf(browserPath === undefined)('the booking desk', () => {
     const item = page.locator('.owed-item', { hasText: 'R-102' });
     await item.waitFor();
     expect(await item.textContent()).toContain('this question only, not diagnostic');
-    await item.getByLabel('Follow-up exam').selectOption({ index: 0 });
+    await item.getByLabel('Follow-up exam').selectOption('R-160');
     await item.getByRole('button', { name: 'Note it' }).click();
     await page.getByText('The answer stays owed').waitFor();
     expect(await page.locator('.owed-item', { hasText: 'R-102' }).count()).toBe(1);

@@ -2,6 +2,7 @@ import { Router } from 'express';
 import { clock } from '../../day/index.js';
 import { bestScanner } from '../../planning/index.js';
 import type { PageDeps } from '../deps.js';
+import { recordedAnswers } from '../recorded-answers.js';
 import { siteTime } from '../site-time.js';
 import { planSheet } from '../view-models/plan-sheet.js';
 
@@ -30,6 +31,7 @@ export function planSheetRoutes(deps: PageDeps): Router {
     response.render('plan-sheet', {
       title: `${stored.id}, plan`,
       stored,
+      recorded: (await recordedAnswers(deps, [stored])).get(stored.id) ?? [],
       booking,
       place:
         booking === undefined

@@ -2,6 +2,7 @@ import { Router } from 'express';
 import type { ExamRequest } from '../../planning/index.js';
 import type { Problem } from '../../shared/index.js';
 import type { PageDeps } from '../deps.js';
+import { recordedAnswers } from '../recorded-answers.js';
 import { requestPage } from '../request-page.js';
 import { formValues, readForm, type FormValues } from '../view-models/request-form.js';
 import { requestRows } from '../view-models/request-rows.js';
@@ -16,10 +17,12 @@ export function requestRoutes(deps: PageDeps): Router {
   router.get('/requests', async (request, response) => {
     const status =
       typeof request.query['status'] === 'string' ? request.query['status'] : 'waiting';
+    const all = await deps.store.requests.list();
     const rows = requestRows(
-      await deps.store.requests.list(),
+      all,
       await deps.store.bookings.listBetween('0000-01-01', '9999-12-31'),
       library,
+      await recordedAnswers(deps, all),
     );
     response.render('requests', {
       title: 'Requests',

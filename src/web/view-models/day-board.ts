@@ -62,6 +62,8 @@ export interface BoardInput {
   readonly requests: ReadonlyMap<string, StoredRequest>;
   readonly examName: (examId: string) => string;
   readonly wishedChance: number;
+  /** What done exams answered, by request. */
+  readonly recorded: ReadonlyMap<string, PlanSummary['answers']>;
 }
 
 /** Scanners side by side, bookings and free gaps to scale. */
@@ -119,10 +121,10 @@ function bookingBlock(
   const request = input.requests.get(booking.requestId);
   const summary = planSummary.safeParse(booking.plan);
   const plan = summary.success ? summary.data : undefined;
-  const worst =
-    plan === undefined
-      ? undefined
-      : [...plan.answers].sort((a, b) => rankOf(a.grade) - rankOf(b.grade))[0];
+  const isDone = booking.status === 'fulfilled';
+  // Once an exam is done its plan says nothing any more: what was recorded counts.
+  const answers = isDone ? input.recorded.get(booking.requestId) : plan?.answers;
+  const worst = [...(answers ?? [])].sort((a, b) => rankOf(a.grade) - rankOf(b.grade))[0];
   return {
     kind: 'booking',
     ...place,
@@ -132,12 +134,12 @@ function bookingBlock(
     requestId: booking.requestId,
     exam: request === undefined ? '' : input.examName(request.body.examId),
     status: booking.status,
-    ...(plan === undefined
+    ...(answers === undefined ? {} : { answers }),
+    ...(plan === undefined || isDone
       ? {}
       : {
           chance: chanceWords(plan.chanceToFinish),
           risky: plan.chanceToFinish < input.wishedChance,
-          answers: plan.answers,
         }),
     ...(worst === undefined ? {} : { worst: { grade: worst.grade, words: worst.words } }),
     ...(worst === undefined || worst.grade === 'diagnostic'

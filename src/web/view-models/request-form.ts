@@ -119,12 +119,19 @@ const fieldLabels: Readonly<Record<string, string>> = {
   b1rms_limit_microtesla: 'B1+rms limit',
 };
 
+const chooseExam = { limit: 'every request names its exam', wayOut: 'Choose one from the list.' };
+
 /** Problems in the form's own words instead of the column names of a list. */
 export function inFormWords(problems: readonly Problem[]): readonly Problem[] {
   return problems.map((problem) => {
     const field = /field ([a-z0-9_]+)$/.exec(problem.thing)?.[1] ?? '';
     const label = fieldLabels[field];
-    return label === undefined ? problem : { ...problem, thing: label };
+    if (label === undefined) return problem;
+    return {
+      ...problem,
+      thing: label,
+      ...(field === 'exam' && problem.value === 'missing' ? chooseExam : {}),
+    };
   });
 }
 

@@ -1,7 +1,7 @@
 import { clock } from '../../day/index.js';
 import { rankOf, type Grade, type SiteLibrary } from '../../exams/index.js';
 import type { StoredBooking, StoredRequest } from '../../store/index.js';
-import { planSummary } from '../planner.js';
+import { planSummary, type PlanSummary } from '../planner.js';
 
 /** One line of the list of requests. */
 export interface RequestRow {
@@ -20,6 +20,7 @@ export function requestRows(
   requests: readonly StoredRequest[],
   bookings: readonly StoredBooking[],
   library: SiteLibrary,
+  recorded: ReadonlyMap<string, PlanSummary['answers']>,
 ): readonly RequestRow[] {
   const byRequest = new Map(bookings.map((b) => [b.requestId, b]));
   return requests.map(({ id, status, body }) => {
@@ -30,9 +31,9 @@ export function requestRows(
       ) ?? [];
     const booking = byRequest.get(id);
     const summary = planSummary.safeParse(booking?.plan);
-    const worst = summary.success
-      ? [...summary.data.answers].sort((a, b) => rankOf(a.grade) - rankOf(b.grade))[0]
-      : undefined;
+    const planned = summary.success ? summary.data.answers : [];
+    const answers = status === 'done' ? (recorded.get(id) ?? []) : planned;
+    const worst = [...answers].sort((a, b) => rankOf(a.grade) - rankOf(b.grade))[0];
     return {
       id,
       exam: exam?.name ?? body.examId,
