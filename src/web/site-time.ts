@@ -33,10 +33,12 @@ export function siteMinute(atMs: number, zone: string): number {
 export function instantOf(date: string, startMin: number, zone: string): number {
   const [year, month, day] = date.split('-').map(Number);
   const hour = Math.floor(startMin / 60);
-  return DateTime.fromObject(
+  const at = DateTime.fromObject(
     { year: year!, month: month!, day: day!, hour, minute: startMin % 60 },
     { zone },
-  ).toMillis();
+  );
+  // By itself the library takes the one that is like the season it is asked in.
+  return Math.min(...at.getPossibleOffsets().map((possible) => possible.toMillis()));
 }
 
 /** Whether a text is a day of the calendar, as year-month-day. */

@@ -80,6 +80,15 @@ describe('slips at the desk', () => {
     expect(gap).toContain('14:05 to 18:00');
   });
 
+  it('nobody is late, overrunning or missing until somebody says who', async () => {
+    await place('09:00');
+    for (const what of ['late', 'overrun', 'no-show']) {
+      const form = await look(`/mend?what=${what}&day=${day}`);
+      expect(form, what).toContain('<option value="">choose</option><option value="R-157.1"');
+    }
+    expect(await look(`/mend?what=no-show&day=${day}&booking=R-157.1`)).not.toContain('>choose<');
+  });
+
   it('a long message is cut where it can be seen, never lost', async () => {
     await place('09:00');
     const value = 'R-157|mr1|2026-12-08|660|30';

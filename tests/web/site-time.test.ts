@@ -1,9 +1,23 @@
-import { describe, expect, it } from 'vitest';
-import { dayFrom, siteDate, siteTime } from '../../src/web/site-time.js';
+import { afterEach, describe, expect, it, vi } from 'vitest';
+import { dayFrom, instantOf, siteDate, siteTime } from '../../src/web/site-time.js';
 
 // Clock changes of Europe/Dublin 2026: 29 March 01:00 and 25 October 01:00 UTC (IANA time zone database, through luxon).
 describe("the site's clock", () => {
   const zone = 'Europe/Dublin';
+  afterEach(() => void vi.useRealTimers());
+
+  it.each(['2026-07-01T12:00:00Z', '2026-12-01T12:00:00Z'])(
+    'takes the first of the two half past ones, asked on %s',
+    (asked) => {
+      vi.useFakeTimers({ now: Date.parse(asked), toFake: ['Date'] });
+      expect(instantOf('2026-10-25', 90, zone)).toBe(Date.UTC(2026, 9, 25, 0, 30));
+      expect(instantOf('2026-10-25', 540, zone)).toBe(Date.UTC(2026, 9, 25, 9, 0));
+      // Half past one is not there on the last Sunday of March: the clock shows half past two then.
+      expect(instantOf('2027-03-28', 90, zone)).toBe(Date.UTC(2027, 2, 28, 1, 30));
+      expect(instantOf('2027-03-28', 540, zone)).toBe(Date.UTC(2027, 2, 28, 8, 0));
+    },
+  );
+
   it('tells the two half past ones of an October night apart', () => {
     const first = siteTime(Date.UTC(2026, 9, 25, 0, 30), zone);
     const second = siteTime(Date.UTC(2026, 9, 25, 1, 30), zone);
